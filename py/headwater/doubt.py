@@ -1,0 +1,508 @@
+"""How sure the check is: every reading and coefficient moved to its ends, the pump learned again under each.
+
+Errors common to the notes and the plan cancel because S is learned through the same nozzle, areas, losses and
+absorption law that the plan then uses. Shifts are carried in ln S and ln rpm, up and down kept apart.
+"""
+
+import math
+from collections.abc import Callable, Iterable, Sequence
+from functools import cached_property
+from typing import NamedTuple
+
+from headwater import jet, notes, suction, water
+from headwater.jet import GRAVITY
+from headwater.notes import Bound
+from headwater.suction import State
+
+# 95 % half-widths of what is not an input of its own [P].
+RPM_SCATTER = 0.01  # of one rpm reading, relative
+TACH_SCALE = 0.02  # of the tach, relative; common to notes and plan
+PAPERS_POWER, PAPERS_RPM = 0.15, 0.05  # of engine power and wide-open rpm out of papers, relative
+THRUST_DEDUCTION = (-0.08, 0.0, 0.05)  # low, middle, high; Eslamdoost et al. 2018 [S]
+
+SIGMAS = 1.959964  # of a 95 % half-width
+CHANCE = 0.04  # of letting go, the most that proven ground may carry [P]
+LOW, MIDDLE, HIGH = 0.025, 0.5, 0.975
+EQUAL = 1e-6  # in ln S
+DISAGREE_EASE = 0.95  # of the lowest let-go rpm, from where notes that contradict forbid a go [P]
+
+Inputs = dict[str, float]
+
+
+class Setting(NamedTuple):
+    """The pump and the water here, under one set of inputs."""
+
+    unit: jet.Unit
+    submergence: float  # z [m]
+    vapor_pressure: float  # [Pa]
+    density: float  # [kg/m3]
+    head: float  # at rest, here [m]
+    pressure_error: float  # [Pa], shared by notes made at this very place
+    tach: float  # true rpm over rpm read
+
+
+class Seen(NamedTuple):
+    """A note as physics needs it."""
+
+    note: int
+    outcome: str
+    rpm: float  # [1/min]
+    boat_speed: float  # [m/s]
+    air_pressure: float  # [Pa]
+    vapor_pressure: float  # [Pa]
+    density: float  # [kg/m3]
+    head_sigma: float  # one sigma of its place's own readings [m]
+    here: bool  # its pressure is the plan's own reading
+    hint: bool  # of an older pump set-up
+
+
+class End(NamedTuple):
+    """One input at one end of its range."""
+
+    field: str
+    setting: Setting
+    plan_rpm: float
+    xs: list[float | None]  # ln S of each note under it
+
+
+class Known(NamedTuple):
+    """What is known of the pump for one state asked about."""
+
+    bounds: list[Bound]  # on the limit, without those that contradict
+    flare_bounds: list[Bound]
+    belief: notes.Belief | None
+    proven: Bound | None  # the hardest clean held note
+    lid: Bound | None  # the lowest let go
+
+
+class Line(NamedTuple):
+    """An rpm at which the pump asks for a given ln S."""
+
+    rpm: float
+    x: float  # ln S asked there
+    kind: str  # what sets it
+    low: float  # rpm, 2.5 % point
+    high: float
+
+
+class Band(NamedTuple):
+    value: float | None
+    low: float | None
+    high: float | None
+
+
+def setting(inputs: Inputs) -> Setting:
+    """The pump and the water under a set of inputs, keyed by field."""
+    unit = jet.unit(
+        inputs["boat.nozzle_diameter"],
+        inputs["boat.impeller_diameter"],
+        inputs["boat.impeller_diameter"] * inputs["hub_share"],
+        inputs["boat.wake_fraction"],
+        inputs["boat.ram_loss"],
+        inputs["boat.intake_loss"],
+        inputs["boat.nozzle_loss"],
+        inputs["boat.pump_efficiency"],
+        inputs["boat.driveline_efficiency"],
+        jet.absorption(inputs["boat.engine_power"], inputs["boat.wide_open_rpm"], inputs["boat.jets"]),
+        inputs["boat.gear_ratio"],
+    )
+    submergence = inputs["boat.shaft_depth"] - inputs["boat.impeller_diameter"] / 2
+    temperature = inputs["place.water_temperature"]
+    vapor_pressure, density = water.vapor_pressure(temperature), water.density(temperature)
+    pressure_error = inputs["pressure_error"]
+    air_pressure = inputs["place.air_pressure"] + pressure_error
+    head = suction.head_at_rest(air_pressure, vapor_pressure, density, submergence)
+    return Setting(unit, submergence, vapor_pressure, density, head, pressure_error, inputs["tach"])
+
+
+def asked(at: Setting, rpm: float, boat_speed: float) -> float | None:
+    """ln S that the plan's place asks at an rpm and a boat speed; none where no head is left."""
+    state = suction.state(at.unit, at.head, at.density, rpm, boat_speed)
+    return math.log(at.tach * suction.speed_asked(state)) if state.npsh_available > 0 else None
+
+
+def seen_state(at: Setting, seen: Seen) -> State:
+    """The state a note was made in."""
+    pressure = seen.air_pressure + (at.pressure_error if seen.here else 0.0)
+    head = suction.head_at_rest(pressure, seen.vapor_pressure, seen.density, at.submergence)
+    return suction.state(at.unit, head, seen.density, seen.rpm, seen.boat_speed)
+
+
+def seen_asked(at: Setting, seen: Seen) -> float | None:
+    """ln S that a note's own state asked of the pump; none where no head is left."""
+    state = seen_state(at, seen)
+    return math.log(at.tach * suction.speed_asked(state)) if state.npsh_available > 0 else None
+
+
+def boiling_rpm(at: Setting, boat_speed: float) -> float:
+    """Engine rpm at which water boils ahead of the impeller, p_1 = p_v; the head at rest must be over 0.
+
+    Source: Bernoulli along the intake and the power balance, solved for rpm [D].
+    """
+    unit, ram = at.unit, jet.ram(at.unit, boat_speed)
+    v_1 = math.sqrt((2 * GRAVITY * at.head + ram) / (1 + unit.intake_loss))
+    v_j = v_1 * unit.inlet_area / unit.nozzle_area
+    power = at.density * unit.nozzle_area / (2 * unit.efficiency) * v_j * (unit.outlet_factor * v_j**2 - ram)
+    return float(max(power / unit.absorption, 0.0) ** (1 / 3))
+
+
+def spread(centre: float, ends: Iterable[float | None], low: float = 0.0, high: float = 0.0) -> tuple[float, float]:
+    """Low and high side of a result: ends pair by pair, the larger step on each side, in quadrature.
+
+    :param ends: the result at both ends of each input in turn; none where an end has no head left
+    :param low: a further step down, over 0
+    :param high: a further step up, over 0
+    Source: propagation of uncertainty by one evaluation at each end [P].
+    """
+    down, up = low * low, high * high
+    steps = [0.0 if end is None else end - centre for end in ends]
+    for first, second in zip(steps[::2], steps[1::2], strict=True):
+        least, most = (first, second) if first < second else (second, first)
+        if least < 0:
+            down += least * least
+        if most > 0:
+            up += most * most
+    return centre - math.sqrt(down), centre + math.sqrt(up)
+
+
+class Reckoning:
+    """One boat at one place with one plan: what its pump asks, what it has shown, and how sure that is.
+
+    :param inputs: central inputs by key, SI
+    :param spans: low and high end of each uncertain input
+    :param seen: notes that count, of this set-up or an older one
+    :param plan_rpm: rpm of the plan under given inputs
+    :param boat_speed: of the plan [m/s]
+    :param reserve: asked of NPSH on new ground
+    :param fixed: ln S where the person fixed it
+    """
+
+    def __init__(
+        self,
+        inputs: Inputs,
+        spans: dict[str, tuple[float, float]],
+        seen: Sequence[Seen],
+        plan_rpm: Callable[[Inputs], float],
+        boat_speed: float,
+        reserve: float,
+        fixed: float | None,
+    ) -> None:
+        self.inputs, self.boat_speed, self.reserve, self.fixed = inputs, boat_speed, reserve, fixed
+        self.centre = setting(inputs)
+        self.rpm = plan_rpm(inputs)
+        self.seen, self.xs, self.sigmas, self.flow_per_rpm = self._read(seen)
+        self.without_head = [note.note for note in seen if note not in self.seen]
+        self.state = suction.state(self.centre.unit, self.centre.head, self.centre.density, self.rpm, boat_speed)
+        self.asked = asked(self.centre, self.rpm, boat_speed)
+        self.ends = []
+        for key, span in spans.items():
+            for value in span:
+                moved = {**inputs, key: value}
+                at = setting(moved)
+                self.ends.append(End(key, at, plan_rpm(moved), [seen_asked(at, note) for note in self.seen]))
+        self.stop_dropped = any(
+            note.outcome == "held" and not note.hint and not self._above_boiling(note) for note in self.seen
+        )
+
+    def _read(self, seen: Sequence[Seen]) -> tuple[list[Seen], list[float], list[float], list[float]]:
+        kept, xs, sigmas, flows = [], [], [], []
+        for note in seen:
+            state = seen_state(self.centre, note)
+            if state.npsh_available <= 0:
+                continue
+            slope = suction.rpm_slope(self.centre.unit, state, note.boat_speed)
+            kept.append(note)
+            xs.append(math.log(suction.speed_asked(state)))
+            sigmas.append(math.hypot(slope * RPM_SCATTER / 2, 0.75 * note.head_sigma / state.npsh_available))
+            flows.append(state.flow / note.rpm)
+        return kept, xs, sigmas, flows
+
+    def _above_boiling(self, note: Seen) -> bool:
+        state = seen_state(self.centre, note)
+        return suction.static_pressure(state, note.vapor_pressure, note.density) > note.vapor_pressure
+
+    # What is known, for the state asked about
+
+    def known(self, boat_speed: float, flow_per_rpm: float) -> Known:
+        """What the notes say of a state with this Q/N: a note made at another is spread by the difference."""
+        limit, flare = [], []
+        for i, note in enumerate(self.seen):
+            sigma = self.sigmas[i]
+            if boat_speed or note.boat_speed:
+                sigma = math.hypot(sigma, math.log(self.flow_per_rpm[i] / flow_per_rpm))
+            if note.hint:
+                sigma = math.hypot(sigma, notes.OLDER_SIGMA)
+            bound = Bound(i, self.xs[i], sigma, note.outcome != "let_go", note.hint)
+            limit.append(bound)
+            if not note.hint:
+                flare.append(bound._replace(below=note.outcome == "held"))
+        bounds = notes.agreeing(limit)
+        held = [b for b in bounds if self.seen[b.note].outcome == "held" and not b.hint]
+        return Known(
+            bounds,
+            notes.agreeing(flare),
+            notes.learn(bounds) if bounds else None,
+            max(held, key=lambda b: b.x) if held else None,
+            notes.lowest_above(limit),
+        )
+
+    @cached_property
+    def known_at_plan(self) -> Known:
+        return self.known(self.boat_speed, self.state.flow / self.rpm)
+
+    @cached_property
+    def today(self) -> bool:
+        """Whether any note of today's pump set-up counts."""
+        return any(not note.hint for note in self.seen)
+
+    @cached_property
+    def contradiction(self) -> tuple[int, int] | None:
+        """The hardest held note and the let-go note it contradicts, by their places among the notes."""
+        limit = [
+            Bound(i, self.xs[i], self.sigmas[i], note.outcome != "let_go", note.hint)
+            for i, note in enumerate(self.seen)
+            if not note.hint
+        ]
+        crossed, lid = notes.contradicting(limit), notes.lowest_above(limit)
+        return (max(crossed, key=lambda b: b.x).note, lid.note) if crossed and lid else None
+
+    @cached_property
+    def capped(self) -> bool:
+        """Whether the limit is known from above: S is fixed, or something of this set-up let go."""
+        return self.fixed is not None or self.known_at_plan.lid is not None
+
+    def limit(self, known: Known, share: float) -> float | None:
+        """ln S of the pump's limit at a share of the belief; none where nothing is known."""
+        if self.fixed is not None:
+            return self.fixed
+        return known.belief.quantile(share) if known.belief else None
+
+    def flare(self, known: Known) -> tuple[float, bool] | None:
+        """ln S of the flare line, and whether it was learned; none where nothing draws it."""
+        flared = [b for b in known.flare_bounds if self.seen[b.note].outcome == "flared"]
+        if flared and self.fixed is None:
+            if any(b.below for b in known.flare_bounds):
+                return notes.learn(known.flare_bounds).quantile(MIDDLE), True
+            note = self.seen[min(flared, key=lambda b: b.x).note]
+            eased = seen_asked(self.centre, note._replace(rpm=note.rpm * notes.FLARE_EASE))
+            return (eased, True) if eased is not None else None
+        middle = self.limit(known, MIDDLE)
+        if middle is None or not (self.fixed is not None or known.lid):
+            return None
+        typical = middle - 0.75 * math.log(notes.FLARE_RATIO)
+        return (max(typical, known.proven.x) if known.proven else typical), False
+
+    # How the ends move things
+
+    @cached_property
+    def learned_ends(self) -> list[tuple[float, float, float] | None]:
+        """By how much each end moves the low, middle and high quantile of ln S, learned again under it."""
+        if self.fixed is not None or self.known_at_plan.belief is None:
+            return [(0.0, 0.0, 0.0)] * len(self.ends)
+        known, belief = self.known_at_plan, self.known_at_plan.belief
+        centre = [belief.quantile(share) for share in (LOW, MIDDLE, HIGH)]
+        moved: list[tuple[float, float, float] | None] = []
+        for end in self.ends:
+            xs = [end.xs[b.note] for b in known.bounds]
+            steps = [x - b.x for x, b in zip(xs, known.bounds, strict=True) if x is not None]
+            if len(steps) < len(xs):
+                moved.append(None)
+            elif max(steps) - min(steps) < EQUAL:  # all moved alike: so does the belief
+                moved.append((steps[0], steps[0], steps[0]))
+            else:
+                again = notes.learn(b._replace(x=b.x + step) for b, step in zip(known.bounds, steps, strict=True))
+                low, middle, high = (again.quantile(share) for share in (LOW, MIDDLE, HIGH))
+                moved.append((low - centre[0], middle - centre[1], high - centre[2]))
+        return moved
+
+    def asked_steps(self, rpm: float, boat_speed: float) -> list[float | None]:
+        """By how much each end moves the ln S asked at an rpm and a boat speed here."""
+        centre = asked(self.centre, rpm, boat_speed)
+        if centre is None:
+            return [None] * len(self.ends)
+        moved = (asked(end.setting, rpm, boat_speed) for end in self.ends)
+        return [None if x is None else x - centre for x in moved]
+
+    @cached_property
+    def plan_steps(self) -> list[float | None]:
+        """By how much each end, and the plan's own reading last, moves the ln S that the plan asks."""
+        assert self.asked is not None
+        steps: list[float | None] = []
+        for end in self.ends:
+            x = asked(end.setting, end.plan_rpm, self.boat_speed)
+            steps.append(None if x is None else x - self.asked)
+        reading = self.slope(self.rpm, self.boat_speed) * RPM_SCATTER
+        return [*steps, -reading, reading]
+
+    def slope(self, rpm: float, boat_speed: float) -> float:
+        """d ln S_req / d ln rpm here."""
+        at = self.centre
+        state = suction.state(at.unit, at.head, at.density, rpm, boat_speed)
+        return float(suction.rpm_slope(at.unit, state, boat_speed))
+
+    def plan_sigma(self, known: Known, x: float, slope: float, steps: Sequence[float | None]) -> float:
+        """One sigma in ln S of what does not cancel between a state and its nearest note.
+
+        :param x: ln S asked
+        :param slope: d ln S_req / d ln rpm there
+        :param steps: by how much each end moves x
+        """
+        total = (slope * RPM_SCATTER / 2) ** 2
+        today = [b for b in known.bounds if not b.hint]
+        if today:
+            near = min(today, key=lambda b: abs(b.x - x))
+            apart = []
+            for end, step in zip(self.ends, steps, strict=False):
+                there = end.xs[near.note]
+                apart.append(None if step is None or there is None else step - (there - near.x))
+            total += (spread(0.0, apart)[1] / SIGMAS) ** 2
+        return math.sqrt(total)
+
+    def ratio_steps(self, steps: Sequence[float | None], side: int) -> list[float | None]:
+        """By how much each end moves ln ratio; side 0 by the low quantile of S, 1 the middle, 2 the high."""
+        out: list[float | None] = []
+        for step, learned in zip(steps, [*self.learned_ends, *[(0.0, 0.0, 0.0)] * 2], strict=False):
+            out.append(None if step is None or learned is None else 4 / 3 * (learned[side] - step))
+        return out
+
+    def ratio_low(self, known: Known, x: float, steps: Sequence[float | None]) -> float | None:
+        """ln of the low side of NPSHA/NPSHR for a state that asks ln S of x."""
+        middle, low = self.limit(known, MIDDLE), self.limit(known, LOW)
+        if middle is None or low is None:
+            return None
+        return spread(4 / 3 * (middle - x), self._about(4 / 3 * (middle - x), steps, 0), low=4 / 3 * (middle - low))[0]
+
+    def ratio_high(self, known: Known, x: float, steps: Sequence[float | None]) -> float | None:
+        """ln of the high side of NPSHA/NPSHR; none while nothing bounds the pump from above."""
+        middle, high = self.limit(known, MIDDLE), self.limit(known, HIGH)
+        if middle is None or high is None or not self.capped:
+            return None
+        return spread(4 / 3 * (middle - x), self._about(4 / 3 * (middle - x), steps, 2), high=4 / 3 * (high - middle))[1]
+
+    @cached_property
+    def plan_ratio(self) -> tuple[float | None, float | None]:
+        """ln of the low and the high side of NPSHA/NPSHR at the plan."""
+        if self.asked is None:
+            return None, None
+        known = self.known_at_plan
+        return (
+            self.ratio_low(known, self.asked, self.plan_steps),
+            self.ratio_high(known, self.asked, self.plan_steps),
+        )
+
+    @cached_property
+    def plan_blur(self) -> float:
+        """One sigma in ln S of what does not cancel between the plan and its nearest note."""
+        assert self.asked is not None
+        slope = self.slope(self.rpm, self.boat_speed)
+        return self.plan_sigma(self.known_at_plan, self.asked, slope, self.plan_steps[:-2])
+
+    @cached_property
+    def new_ground_at_plan(self) -> float | None:
+        """The largest ln S that is a go on new ground, judged with the plan's doubt."""
+        assert self.asked is not None
+        return self._new_ground(self.known_at_plan, self.asked, self.plan_steps)
+
+    def _about(self, centre: float, steps: Sequence[float | None], side: int) -> list[float | None]:
+        return [None if step is None else centre + step for step in self.ratio_steps(steps, side)]
+
+    # Lines: the rpm that holds, flares, lets go
+
+    def rpm_at(self, x: float, boat_speed: float) -> float:
+        """Engine rpm that asks ln S of x here at a boat speed."""
+        at = self.centre
+        return float(suction.rpm_at(at.unit, at.head, at.density, boat_speed, math.exp(x)))
+
+    @cached_property
+    def has_head(self) -> bool:
+        return self.centre.head > 0
+
+
+    def holding(self, boat_speed: float, start: float | None = None) -> tuple[float, float, str] | None:
+        """The most rpm that is a go at a boat speed, the ln S asked there, and what sets it; none if nothing is."""
+        if not self.has_head or (self.fixed is None and not self.today):
+            return None
+        at, rpm, found = self.centre, start or self.rpm, None
+        for _ in range(12):
+            state = suction.state(at.unit, at.head, at.density, rpm, boat_speed)
+            if state.npsh_available <= 0:
+                rpm *= 0.8
+                continue
+            known = self.known(boat_speed, state.flow / rpm)
+            found = self._hold(known, rpm, boat_speed, math.log(suction.speed_asked(state)))
+            if found is None or abs(found[0] / rpm - 1) < 1e-9:
+                break
+            rpm = found[0]
+        return found
+
+    def _hold(self, known: Known, rpm: float, boat_speed: float, x: float) -> tuple[float, float, str] | None:
+        steps = self.asked_steps(rpm, boat_speed)
+        slope = self.slope(rpm, boat_speed)
+        limits = []
+        if known.proven and known.belief and self.fixed is None:
+            sigma = self.plan_sigma(known, x, slope, steps)
+            at_chance = known.belief.x_at_chance(CHANCE, sigma)
+            limits.append((known.proven.x, "proven") if known.proven.x <= at_chance else (at_chance, "chance"))
+        new = self._new_ground(known, x, [*steps, -slope * RPM_SCATTER, slope * RPM_SCATTER])
+        if new is not None:
+            limits.append((new, "reserve"))
+        if not limits:
+            return None
+        x, kind = max(limits)
+        if known.lid and known.lid.x - EQUAL <= x:
+            x, kind = known.lid.x - 2 * EQUAL, "let_go"
+        found = self.rpm_at(x, boat_speed)
+        stop = math.inf if self.stop_dropped else boiling_rpm(self.centre, boat_speed)
+        if found >= stop:
+            found, kind = stop * (1 - EQUAL), "stop"
+        if self.contradiction and known.lid:
+            eased = DISAGREE_EASE * self.rpm_at(known.lid.x, boat_speed)
+            if found >= eased:
+                found, kind = eased * (1 - EQUAL), "disagree"
+        if kind in ("stop", "disagree"):
+            x = asked(self.centre, found, boat_speed) or x
+        return found, x, kind
+
+    def _new_ground(self, known: Known, x: float, steps: Sequence[float | None]) -> float | None:
+        """The largest ln S that is a go on new ground, judged with the doubt of the state that asks x."""
+        low = self.ratio_low(known, x, steps)
+        if low is None:
+            return None
+        top = x + 0.75 * (low - math.log(self.reserve))
+        flare = self.flare(known)
+        if flare and flare[1]:
+            top = min(top, flare[0] - EQUAL)
+        if self.fixed is not None:
+            return top
+        ceiling = [b.x for b in known.bounds if not b.hint and self.seen[b.note].outcome != "held"]
+        floor = [b.x for b in known.bounds if not b.hint and b.below]
+        if not ceiling or not floor:
+            return None
+        top = min(top, max(ceiling))
+        return top if top >= min(floor) else None
+
+    def line(
+        self, x: float, boat_speed: float, kind: str, low: float, high: float, sides: tuple[int, int] | int, rpm: float
+    ) -> Line:
+        """A line's rpm with its band.
+
+        :param x: ln S on the line
+        :param low: step down of x by what was learned, over 0; ``high`` the step up
+        :param sides: quantiles that move with the ends on the low and high side, or the note that the line follows
+        :param rpm: engine rpm on the line
+        """
+        slope = self.slope(rpm, boat_speed)
+        steps = self.asked_steps(rpm, boat_speed)
+        moved = []
+        for side in (0, 1):
+            ends: list[float | None] = []
+            for i, step in enumerate(steps):
+                if isinstance(sides, int):
+                    there = self.ends[i].xs[sides]
+                    learned = None if there is None else there - self.xs[sides]
+                else:
+                    quantiles = self.learned_ends[i]
+                    learned = None if quantiles is None else quantiles[sides[side]]
+                ends.append(None if step is None or learned is None else (learned - step) / slope)
+            moved.append(spread(0.0, ends, low / slope, high / slope)[side])
+        return Line(rpm, x, kind, rpm * math.exp(moved[0]), rpm * math.exp(moved[1]))

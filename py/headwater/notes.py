@@ -1,0 +1,136 @@
+"""What this pump has shown: notes as bounds on S, what is proven, and what is believed of its limit.
+
+S is learned in ln S on a grid. A *held* note bounds it from below, a *let go* note from above; *flared* (the
+revs ran up, it did not let go) bounds the limit from below and the flare line from above.
+"""
+
+import math
+from collections.abc import Iterable, Sequence
+from typing import NamedTuple
+
+from headwater.suction import S_FROM_DIMENSIONLESS
+
+# Prior: ln omega_ss uniform, deliberately wide, so that it never makes a go by itself [P].
+PRIOR_LOW, PRIOR_HIGH = math.log(2 * S_FROM_DIMENSIONLESS), math.log(30 * S_FROM_DIMENSIONLESS)
+GRID = 400
+OLDER_SIGMA = 0.25  # one sigma in ln S of a note of an older pump set-up [P]
+FLARE_RATIO = 1.25  # NPSH ratio of the flare line while none has been seen [P]
+FLARE_EASE = 0.90  # of the lowest flared rpm, where nothing has held yet [P]
+DISAGREE_SIGMAS = 1.96  # joint spreads by which notes must cross to contradict each other
+_WINDOW = 5.0  # sigmas beyond which a bound is taken as certain
+
+
+class Bound(NamedTuple):
+    """One note as a bound on ln S."""
+
+    note: int  # which note
+    x: float  # ln S_note
+    sigma: float  # one sigma in ln S, for the state asked about
+    below: bool  # bounds from below (the pump held at x) or from above
+    hint: bool  # of an older pump set-up: it never proves, bounds or stops
+
+
+def normal(z: float) -> float:
+    """Standard normal distribution function."""
+    return 0.5 * math.erfc(-z * math.sqrt(0.5))
+
+
+class Belief:
+    """A distribution of ln S on an even grid, made by :func:`learn`."""
+
+    def __init__(self, start: float, step: float, weights: Sequence[float]) -> None:
+        total = sum(weights)
+        self.start, self.step = start, step
+        self.weights = [weight / total for weight in weights]
+        cumulative, self.below = 0.0, [0.0]
+        for weight in self.weights:
+            cumulative += weight
+            self.below.append(cumulative)
+
+    def quantile(self, share: float) -> float:
+        """ln S with this share of the belief under it; each grid point is a cell one step wide."""
+        low, high = 0, len(self.weights)
+        while high - low > 1:
+            middle = (low + high) // 2
+            low, high = (middle, high) if self.below[middle] <= share else (low, middle)
+        return self.start + (low - 0.5 + (share - self.below[low]) / self.weights[low]) * self.step
+
+    def chance_under(self, x: float, sigma: float) -> float:
+        """Chance that ln S lies under x, where x itself is known to one sigma."""
+        return self._chance_and_density(x, sigma)[0]
+
+    def x_at_chance(self, chance: float, sigma: float) -> float:
+        """The x with this chance under it; :meth:`chance_under` solved by Newton's method in its logarithm."""
+        x = self.quantile(chance)
+        for _ in range(8):
+            under, density = self._chance_and_density(x, sigma)
+            move = math.log(under / chance) * under / density
+            x -= move
+            if abs(move) < 1e-9:
+                break
+        return x
+
+    def _chance_and_density(self, x: float, sigma: float) -> tuple[float, float]:
+        first = int((x - _WINDOW * sigma - self.start) / self.step) + 1
+        last = int((x + _WINDOW * sigma - self.start) / self.step) + 1
+        first = min(max(first, 0), len(self.weights))
+        under, density = self.below[first], 1e-300
+        for k in range(first, min(last, len(self.weights))):
+            z = (x - self.start - k * self.step) / sigma
+            under += self.weights[k] * normal(z)
+            density += self.weights[k] * math.exp(-0.5 * z * z)
+        return max(under, 1e-300), density / (sigma * math.sqrt(2 * math.pi))
+
+
+def learn(bounds: Iterable[Bound]) -> Belief:
+    """Posterior of ln S: the prior times each note's likelihood, on a grid of 400 points.
+
+    Source: Bayes' rule with normal scatter of each note [D]; the prior [P].
+    """
+    bounds = list(bounds)
+    top = max([PRIOR_HIGH, *(bound.x + 1 for bound in bounds)])  # e times the largest S_note at the least
+    step = (top - PRIOR_LOW) / (GRID - 1)
+    spans = []
+    first, last = 0, GRID - 1
+    for bound in bounds:
+        reach = _WINDOW * bound.sigma
+        low = math.ceil((bound.x - reach - PRIOR_LOW) / step)
+        high = math.floor((bound.x + reach - PRIOR_LOW) / step)
+        spans.append((bound, low, high))
+        if bound.below:
+            first = max(first, min(low, GRID - 1))
+        else:
+            last = min(last, max(high, 0))
+    if first > last:  # notes that cross by many sigmas: all that is left is the point between them
+        first = last = (first + last) // 2
+    weights = [1.0] * (last - first + 1)
+    for bound, low, high in spans:
+        scale = math.sqrt(0.5) / (bound.sigma if bound.below else -bound.sigma)
+        offset = PRIOR_LOW - bound.x
+        for k in range(max(low, first), min(high, last) + 1):
+            weights[k - first] *= 0.5 * math.erfc(-(offset + k * step) * scale)
+    return Belief(PRIOR_LOW + first * step, step, [weight + 1e-300 for weight in weights])
+
+
+def lowest_above(bounds: Iterable[Bound]) -> Bound | None:
+    """The lowest bound from above of today's set-up."""
+    above = [bound for bound in bounds if not (bound.below or bound.hint)]
+    return min(above, key=lambda bound: bound.x) if above else None
+
+
+def contradicting(bounds: Sequence[Bound]) -> list[Bound]:
+    """Bounds from below that lie over the lowest bound from above by more than their joint scatter allows."""
+    lid = lowest_above(bounds)
+    if lid is None:
+        return []
+    return [
+        bound
+        for bound in bounds
+        if bound.below and bound.x - lid.x > DISAGREE_SIGMAS * math.hypot(bound.sigma, lid.sigma)
+    ]
+
+
+def agreeing(bounds: Sequence[Bound]) -> list[Bound]:
+    """The bounds without those from below that contradict the lowest from above: they prove nothing."""
+    crossed = contradicting(bounds)
+    return [bound for bound in bounds if bound not in crossed] if crossed else list(bounds)
