@@ -24,6 +24,7 @@ SIGMAS = 1.959964  # of a 95 % half-width
 CHANCE = 0.04  # of letting go, the most that proven ground may carry [P]
 LOW, MIDDLE, HIGH = 0.025, 0.5, 0.975
 EQUAL = 1e-6  # in ln S
+_SAME_DOUBT = 0.005  # relative change of rpm under which the ends are not worked out again
 DISAGREE_EASE = 0.95  # of the lowest let-go rpm, from where notes that contradict forbid a go [P]
 
 Inputs = dict[str, float]
@@ -65,6 +66,14 @@ class End(NamedTuple):
     xs: list[float | None]  # ln S of each note under it
 
 
+class Moved(NamedTuple):
+    """The plan's state under one end of an input, or of its own reading."""
+
+    setting: Setting
+    state: State
+    rpm: float
+
+
 class Known(NamedTuple):
     """What is known of the pump for one state asked about."""
 
@@ -75,6 +84,22 @@ class Known(NamedTuple):
     lid: Bound | None  # the lowest let go
 
 
+class Flare(NamedTuple):
+    """Where revs run up without letting go."""
+
+    x: float  # ln S
+    learned: bool  # from a flared note, else typical
+
+
+class Holding(NamedTuple):
+    """The most rpm that is a go at a boat speed."""
+
+    rpm: float  # [1/min]
+    x: float  # ln S asked there
+    kind: str  # what sets it: proven, chance, reserve, let_go, stop, disagree
+    steps: Sequence[float | None]  # by how much each end moves x
+
+
 class Line(NamedTuple):
     """An rpm at which the pump asks for a given ln S."""
 
@@ -83,12 +108,8 @@ class Line(NamedTuple):
     kind: str  # what sets it
     low: float  # rpm, 2.5 % point
     high: float
-
-
-class Band(NamedTuple):
-    value: float | None
-    low: float | None
-    high: float | None
+    power_low: float  # share of the line's power
+    power_high: float
 
 
 def setting(inputs: Inputs) -> Setting:
@@ -146,23 +167,27 @@ def boiling_rpm(at: Setting, boat_speed: float) -> float:
     return float(max(power / unit.absorption, 0.0) ** (1 / 3))
 
 
-def spread(centre: float, ends: Iterable[float | None], low: float = 0.0, high: float = 0.0) -> tuple[float, float]:
-    """Low and high side of a result: ends pair by pair, the larger step on each side, in quadrature.
+def reach(steps: Sequence[float | None], own: float, sign: int) -> float:
+    """How far a result reaches to one side: the larger step of each input's two ends, in quadrature.
 
-    :param ends: the result at both ends of each input in turn; none where an end has no head left
-    :param low: a further step down, over 0
-    :param high: a further step up, over 0
+    :param steps: of the result at both ends of each input in turn; none where an end has no head left
+    :param own: a further step to that side, over 0
+    :param sign: -1 for the low side, 1 for the high one
+    :returns: the reach, over 0
     Source: propagation of uncertainty by one evaluation at each end [P].
     """
-    down, up = low * low, high * high
-    steps = [0.0 if end is None else end - centre for end in ends]
+    total = own * own
     for first, second in zip(steps[::2], steps[1::2], strict=True):
-        least, most = (first, second) if first < second else (second, first)
-        if least < 0:
-            down += least * least
-        if most > 0:
-            up += most * most
-    return centre - math.sqrt(down), centre + math.sqrt(up)
+        far = max(sign * first if first else 0.0, sign * second if second else 0.0)
+        if far > 0:
+            total += far * far
+    return math.sqrt(total)
+
+
+def spread(centre: float, ends: Iterable[float | None], low: float = 0.0, high: float = 0.0) -> tuple[float, float]:
+    """Low and high side of a result from its values at the ends, see :func:`reach`."""
+    steps = [None if end is None else end - centre for end in ends]
+    return centre - reach(steps, low, -1), centre + reach(steps, high, 1)
 
 
 class Reckoning:
@@ -223,19 +248,22 @@ class Reckoning:
 
     # What is known, for the state asked about
 
-    def known(self, boat_speed: float, flow_per_rpm: float) -> Known:
-        """What the notes say of a state with this Q/N: a note made at another is spread by the difference."""
-        limit, flare = [], []
+    def bounds(self, boat_speed: float, flow_per_rpm: float) -> list[Bound]:
+        """Every note as a bound on the limit at a state with this Q/N; one made at another Q/N is spread."""
+        limit = []
         for i, note in enumerate(self.seen):
             sigma = self.sigmas[i]
             if boat_speed or note.boat_speed:
                 sigma = math.hypot(sigma, math.log(self.flow_per_rpm[i] / flow_per_rpm))
             if note.hint:
                 sigma = math.hypot(sigma, notes.OLDER_SIGMA)
-            bound = Bound(i, self.xs[i], sigma, note.outcome != "let_go", note.hint)
-            limit.append(bound)
-            if not note.hint:
-                flare.append(bound._replace(below=note.outcome == "held"))
+            limit.append(Bound(i, self.xs[i], sigma, note.outcome != "let_go", note.hint))
+        return limit
+
+    def known(self, boat_speed: float, flow_per_rpm: float) -> Known:
+        """What the notes say of a state with this Q/N."""
+        limit = self.bounds(boat_speed, flow_per_rpm)
+        flare = [b._replace(below=self.seen[b.note].outcome == "held") for b in limit if not b.hint]
         bounds = notes.agreeing(limit)
         held = [b for b in bounds if self.seen[b.note].outcome == "held" and not b.hint]
         return Known(
@@ -256,13 +284,15 @@ class Reckoning:
         return any(not note.hint for note in self.seen)
 
     @cached_property
+    def flow_at_rest(self) -> float:
+        """Q/N at rest, the same at any rpm [m3 min/s]."""
+        at = self.centre
+        return float(suction.state(at.unit, at.head, at.density, self.rpm, 0.0).flow / self.rpm)
+
+    @cached_property
     def contradiction(self) -> tuple[int, int] | None:
-        """The hardest held note and the let-go note it contradicts, by their places among the notes."""
-        limit = [
-            Bound(i, self.xs[i], self.sigmas[i], note.outcome != "let_go", note.hint)
-            for i, note in enumerate(self.seen)
-            if not note.hint
-        ]
+        """The hardest held note and the let-go note it contradicts, by their places in ``seen``."""
+        limit = [b for b in self.bounds(self.boat_speed, self.state.flow / self.rpm) if not b.hint]
         crossed, lid = notes.contradicting(limit), notes.lowest_above(limit)
         return (max(crossed, key=lambda b: b.x).note, lid.note) if crossed and lid else None
 
@@ -277,20 +307,20 @@ class Reckoning:
             return self.fixed
         return known.belief.quantile(share) if known.belief else None
 
-    def flare(self, known: Known) -> tuple[float, bool] | None:
-        """ln S of the flare line, and whether it was learned; none where nothing draws it."""
+    def flare(self, known: Known) -> Flare | None:
+        """The flare line; none where nothing draws it."""
         flared = [b for b in known.flare_bounds if self.seen[b.note].outcome == "flared"]
         if flared and self.fixed is None:
             if any(b.below for b in known.flare_bounds):
-                return notes.learn(known.flare_bounds).quantile(MIDDLE), True
+                return Flare(notes.learn(known.flare_bounds).quantile(MIDDLE), True)
             note = self.seen[min(flared, key=lambda b: b.x).note]
             eased = seen_asked(self.centre, note._replace(rpm=note.rpm * notes.FLARE_EASE))
-            return (eased, True) if eased is not None else None
+            return Flare(eased, True) if eased is not None else None
         middle = self.limit(known, MIDDLE)
         if middle is None or not (self.fixed is not None or known.lid):
             return None
         typical = middle - 0.75 * math.log(notes.FLARE_RATIO)
-        return (max(typical, known.proven.x) if known.proven else typical), False
+        return Flare(max(typical, known.proven.x) if known.proven else typical, False)
 
     # How the ends move things
 
@@ -315,6 +345,14 @@ class Reckoning:
                 moved.append((low - centre[0], middle - centre[1], high - centre[2]))
         return moved
 
+    def learned_step(self, at: Setting) -> float:
+        """By how much the notes move under another setting, on the mean."""
+        if self.fixed is not None or not self.seen:
+            return 0.0
+        moved = [(seen_asked(at, note), x) for note, x in zip(self.seen, self.xs, strict=True)]
+        steps = [there - x for there, x in moved if there is not None]
+        return sum(steps) / len(steps) if steps else 0.0
+
     def asked_steps(self, rpm: float, boat_speed: float) -> list[float | None]:
         """By how much each end moves the ln S asked at an rpm and a boat speed here."""
         centre = asked(self.centre, rpm, boat_speed)
@@ -324,15 +362,22 @@ class Reckoning:
         return [None if x is None else x - centre for x in moved]
 
     @cached_property
+    def plan_states(self) -> list[Moved]:
+        """The plan's state under each end of each input, and under both ends of its own reading last."""
+        at, moved = self.centre, [(end.setting, end.plan_rpm) for end in self.ends]
+        moved += [(at, self.rpm * (1 - RPM_SCATTER)), (at, self.rpm * (1 + RPM_SCATTER))]
+        return [
+            Moved(at, suction.state(at.unit, at.head, at.density, rpm, self.boat_speed), rpm) for at, rpm in moved
+        ]
+
+    @cached_property
     def plan_steps(self) -> list[float | None]:
-        """By how much each end, and the plan's own reading last, moves the ln S that the plan asks."""
+        """By how much each of those moves the ln S that the plan asks."""
         assert self.asked is not None
-        steps: list[float | None] = []
-        for end in self.ends:
-            x = asked(end.setting, end.plan_rpm, self.boat_speed)
-            steps.append(None if x is None else x - self.asked)
-        reading = self.slope(self.rpm, self.boat_speed) * RPM_SCATTER
-        return [*steps, -reading, reading]
+        return [
+            math.log(at.tach * suction.speed_asked(state)) - self.asked if state.npsh_available > 0 else None
+            for at, state, _ in self.plan_states
+        ]
 
     def slope(self, rpm: float, boat_speed: float) -> float:
         """d ln S_req / d ln rpm here."""
@@ -352,32 +397,33 @@ class Reckoning:
         if today:
             near = min(today, key=lambda b: abs(b.x - x))
             apart = []
-            for end, step in zip(self.ends, steps, strict=False):
+            for end, step in zip(self.ends, steps, strict=True):
                 there = end.xs[near.note]
                 apart.append(None if step is None or there is None else step - (there - near.x))
-            total += (spread(0.0, apart)[1] / SIGMAS) ** 2
+            total += (reach(apart, 0.0, 1) / SIGMAS) ** 2
         return math.sqrt(total)
 
-    def ratio_steps(self, steps: Sequence[float | None], side: int) -> list[float | None]:
-        """By how much each end moves ln ratio; side 0 by the low quantile of S, 1 the middle, 2 the high."""
-        out: list[float | None] = []
-        for step, learned in zip(steps, [*self.learned_ends, *[(0.0, 0.0, 0.0)] * 2], strict=False):
-            out.append(None if step is None or learned is None else 4 / 3 * (learned[side] - step))
-        return out
+    def _apart(self, steps: Sequence[float | None], side: int) -> list[float | None]:
+        """By how much each end moves the limit's quantile away from what a state asks."""
+        learned = [*self.learned_ends, (0.0, 0.0, 0.0), (0.0, 0.0, 0.0)]
+        return [
+            None if step is None or moved is None else moved[side] - step
+            for step, moved in zip(steps, learned, strict=True)
+        ]
 
     def ratio_low(self, known: Known, x: float, steps: Sequence[float | None]) -> float | None:
         """ln of the low side of NPSHA/NPSHR for a state that asks ln S of x."""
         middle, low = self.limit(known, MIDDLE), self.limit(known, LOW)
         if middle is None or low is None:
             return None
-        return spread(4 / 3 * (middle - x), self._about(4 / 3 * (middle - x), steps, 0), low=4 / 3 * (middle - low))[0]
+        return 4 / 3 * (middle - x - reach(self._apart(steps, 0), middle - low, -1))
 
     def ratio_high(self, known: Known, x: float, steps: Sequence[float | None]) -> float | None:
         """ln of the high side of NPSHA/NPSHR; none while nothing bounds the pump from above."""
         middle, high = self.limit(known, MIDDLE), self.limit(known, HIGH)
         if middle is None or high is None or not self.capped:
             return None
-        return spread(4 / 3 * (middle - x), self._about(4 / 3 * (middle - x), steps, 2), high=4 / 3 * (high - middle))[1]
+        return 4 / 3 * (middle - x + reach(self._apart(steps, 2), high - middle, 1))
 
     @cached_property
     def plan_ratio(self) -> tuple[float | None, float | None]:
@@ -403,8 +449,11 @@ class Reckoning:
         assert self.asked is not None
         return self._new_ground(self.known_at_plan, self.asked, self.plan_steps)
 
-    def _about(self, centre: float, steps: Sequence[float | None], side: int) -> list[float | None]:
-        return [None if step is None else centre + step for step in self.ratio_steps(steps, side)]
+    @cached_property
+    def absorbed_steps(self) -> list[float]:
+        """By how much each end moves ln power at the same rpm."""
+        here = self.centre.unit.absorption
+        return [math.log(end.setting.unit.absorption / here) for end in self.ends]
 
     # Lines: the rpm that holds, flares, lets go
 
@@ -418,31 +467,43 @@ class Reckoning:
         return self.centre.head > 0
 
 
-    def holding(self, boat_speed: float, start: float | None = None) -> tuple[float, float, str] | None:
-        """The most rpm that is a go at a boat speed, the ln S asked there, and what sets it; none if nothing is."""
+    def holding(self, boat_speed: float, start: float | None = None, passes: int = 12) -> Holding | None:
+        """The most rpm that is a go at a boat speed; none where nothing is known to hold.
+
+        :param start: engine rpm to begin from
+        :param passes: the most rounds, each judging with the doubt of the rpm found before
+        """
         if not self.has_head or (self.fixed is None and not self.today):
             return None
         at, rpm, found = self.centre, start or self.rpm, None
-        for _ in range(12):
+        judged = math.inf
+        steps: list[float | None] = []
+        for _ in range(passes):
             state = suction.state(at.unit, at.head, at.density, rpm, boat_speed)
             if state.npsh_available <= 0:
                 rpm *= 0.8
                 continue
+            if abs(judged / rpm - 1) > _SAME_DOUBT:
+                judged, steps = rpm, self.asked_steps(rpm, boat_speed)
             known = self.known(boat_speed, state.flow / rpm)
-            found = self._hold(known, rpm, boat_speed, math.log(suction.speed_asked(state)))
-            if found is None or abs(found[0] / rpm - 1) < 1e-9:
+            slope = float(suction.rpm_slope(at.unit, state, boat_speed))
+            found = self._hold(known, boat_speed, math.log(suction.speed_asked(state)), slope, steps)
+            if found is None or abs(found.rpm / rpm - 1) < EQUAL / 10:
                 break
-            rpm = found[0]
+            rpm = found.rpm
         return found
 
-    def _hold(self, known: Known, rpm: float, boat_speed: float, x: float) -> tuple[float, float, str] | None:
-        steps = self.asked_steps(rpm, boat_speed)
-        slope = self.slope(rpm, boat_speed)
+    def _hold(
+        self, known: Known, boat_speed: float, x: float, slope: float, steps: Sequence[float | None]
+    ) -> Holding | None:
+        """The most rpm that is a go, judged with the doubt of a state that asks ln S of x."""
         limits = []
         if known.proven and known.belief and self.fixed is None:
             sigma = self.plan_sigma(known, x, slope, steps)
-            at_chance = known.belief.x_at_chance(CHANCE, sigma)
-            limits.append((known.proven.x, "proven") if known.proven.x <= at_chance else (at_chance, "chance"))
+            if known.belief.chance_under(known.proven.x, sigma) <= CHANCE:
+                limits.append((known.proven.x, "proven"))
+            else:
+                limits.append((known.belief.x_at_chance(CHANCE, sigma), "chance"))
         new = self._new_ground(known, x, [*steps, -slope * RPM_SCATTER, slope * RPM_SCATTER])
         if new is not None:
             limits.append((new, "reserve"))
@@ -461,7 +522,7 @@ class Reckoning:
                 found, kind = eased * (1 - EQUAL), "disagree"
         if kind in ("stop", "disagree"):
             x = asked(self.centre, found, boat_speed) or x
-        return found, x, kind
+        return Holding(found, x, kind, steps)
 
     def _new_ground(self, known: Known, x: float, steps: Sequence[float | None]) -> float | None:
         """The largest ln S that is a go on new ground, judged with the doubt of the state that asks x."""
@@ -470,8 +531,8 @@ class Reckoning:
             return None
         top = x + 0.75 * (low - math.log(self.reserve))
         flare = self.flare(known)
-        if flare and flare[1]:
-            top = min(top, flare[0] - EQUAL)
+        if flare and flare.learned:
+            top = min(top, flare.x - EQUAL)
         if self.fixed is not None:
             return top
         ceiling = [b.x for b in known.bounds if not b.hint and self.seen[b.note].outcome != "held"]
@@ -482,27 +543,42 @@ class Reckoning:
         return top if top >= min(floor) else None
 
     def line(
-        self, x: float, boat_speed: float, kind: str, low: float, high: float, sides: tuple[int, int] | int, rpm: float
+        self,
+        x: float,
+        boat_speed: float,
+        kind: str,
+        own: tuple[float, float],
+        follows: tuple[int, int] | int,
+        rpm: float,
+        steps: Sequence[float | None],
     ) -> Line:
         """A line's rpm with its band.
 
         :param x: ln S on the line
-        :param low: step down of x by what was learned, over 0; ``high`` the step up
-        :param sides: quantiles that move with the ends on the low and high side, or the note that the line follows
+        :param own: step of x down and up by what was learned, over 0
+        :param follows: the quantiles of S (0 low, 1 middle, 2 high) that the low and the high side move with, or
+            the note that the whole line follows
         :param rpm: engine rpm on the line
+        :param steps: by how much each end moves the ln S asked there
         """
         slope = self.slope(rpm, boat_speed)
-        steps = self.asked_steps(rpm, boat_speed)
-        moved = []
-        for side in (0, 1):
-            ends: list[float | None] = []
-            for i, step in enumerate(steps):
-                if isinstance(sides, int):
-                    there = self.ends[i].xs[sides]
-                    learned = None if there is None else there - self.xs[sides]
-                else:
-                    quantiles = self.learned_ends[i]
-                    learned = None if quantiles is None else quantiles[sides[side]]
-                ends.append(None if step is None or learned is None else (learned - step) / slope)
-            moved.append(spread(0.0, ends, low / slope, high / slope)[side])
-        return Line(rpm, x, kind, rpm * math.exp(moved[0]), rpm * math.exp(moved[1]))
+        if isinstance(follows, int):
+            here = self.xs[follows]
+            theirs = [None if (there := end.xs[follows]) is None else there - here for end in self.ends]
+            learned = (theirs, theirs)
+        else:
+            learned = tuple([None if q is None else q[side] for q in self.learned_ends] for side in follows)
+        sides = []
+        for sign, far, moves in ((-1, own[0], learned[0]), (1, own[1], learned[1])):
+            rpm_ends = [
+                None if move is None or step is None else (move - step) / slope
+                for move, step in zip(moves, steps, strict=True)
+            ]
+            power_ends = [
+                None if end is None else 3 * end + absorbed
+                for end, absorbed in zip(rpm_ends, self.absorbed_steps, strict=True)
+            ]
+            sides.append(math.exp(sign * reach(rpm_ends, far / slope, sign)))
+            sides.append(math.exp(sign * reach(power_ends, 3 * far / slope, sign)))
+        rpm_low, power_low, rpm_high, power_high = sides
+        return Line(rpm, x, kind, rpm * rpm_low, rpm * rpm_high, power_low, power_high)

@@ -5,6 +5,7 @@ revs ran up, it did not let go) bounds the limit from below and the flare line f
 """
 
 import math
+from math import erfc, exp
 from collections.abc import Iterable, Sequence
 from typing import NamedTuple
 
@@ -17,7 +18,8 @@ OLDER_SIGMA = 0.25  # one sigma in ln S of a note of an older pump set-up [P]
 FLARE_RATIO = 1.25  # NPSH ratio of the flare line while none has been seen [P]
 FLARE_EASE = 0.90  # of the lowest flared rpm, where nothing has held yet [P]
 DISAGREE_SIGMAS = 1.96  # joint spreads by which notes must cross to contradict each other
-_WINDOW = 5.0  # sigmas beyond which a bound is taken as certain
+_ROOT_HALF = math.sqrt(0.5)
+_WINDOW = 4.5  # sigmas beyond which a bound is taken as certain
 
 
 class Bound(NamedTuple):
@@ -28,11 +30,6 @@ class Bound(NamedTuple):
     sigma: float  # one sigma in ln S, for the state asked about
     below: bool  # bounds from below (the pump held at x) or from above
     hint: bool  # of an older pump set-up: it never proves, bounds or stops
-
-
-def normal(z: float) -> float:
-    """Standard normal distribution function."""
-    return 0.5 * math.erfc(-z * math.sqrt(0.5))
 
 
 class Belief:
@@ -66,20 +63,20 @@ class Belief:
             under, density = self._chance_and_density(x, sigma)
             move = math.log(under / chance) * under / density
             x -= move
-            if abs(move) < 1e-9:
+            if abs(move) < 1e-4:  # the next step would be its square
                 break
         return x
 
     def _chance_and_density(self, x: float, sigma: float) -> tuple[float, float]:
-        first = int((x - _WINDOW * sigma - self.start) / self.step) + 1
+        first = min(max(int((x - _WINDOW * sigma - self.start) / self.step) + 1, 0), len(self.weights))
         last = int((x + _WINDOW * sigma - self.start) / self.step) + 1
-        first = min(max(first, 0), len(self.weights))
-        under, density = self.below[first], 1e-300
-        for k in range(first, min(last, len(self.weights))):
-            z = (x - self.start - k * self.step) / sigma
-            under += self.weights[k] * normal(z)
-            density += self.weights[k] * math.exp(-0.5 * z * z)
-        return max(under, 1e-300), density / (sigma * math.sqrt(2 * math.pi))
+        z, step = (x - self.start - first * self.step) / sigma, self.step / sigma
+        under, density = 0.0, 1e-300
+        for weight in self.weights[first:last] if last > first else ():
+            under += weight * erfc(-z * _ROOT_HALF)
+            density += weight * exp(-0.5 * z * z)
+            z -= step
+        return max(self.below[first] + 0.5 * under, 1e-300), density / (sigma * math.sqrt(2 * math.pi))
 
 
 def learn(bounds: Iterable[Bound]) -> Belief:
@@ -105,10 +102,10 @@ def learn(bounds: Iterable[Bound]) -> Belief:
         first = last = (first + last) // 2
     weights = [1.0] * (last - first + 1)
     for bound, low, high in spans:
-        scale = math.sqrt(0.5) / (bound.sigma if bound.below else -bound.sigma)
+        scale = _ROOT_HALF / (bound.sigma if bound.below else -bound.sigma)
         offset = PRIOR_LOW - bound.x
         for k in range(max(low, first), min(high, last) + 1):
-            weights[k - first] *= 0.5 * math.erfc(-(offset + k * step) * scale)
+            weights[k - first] *= 0.5 * erfc(-(offset + k * step) * scale)
     return Belief(PRIOR_LOW + first * step, step, [weight + 1e-300 for weight in weights])
 
 

@@ -1,0 +1,702 @@
+"""The one door: a case in, an answer out, for the phone, the command line and the tests."""
+
+import json
+import math
+from collections.abc import Callable, Iterable, Mapping, Sequence
+from itertools import pairwise
+from typing import Any
+
+from headwater import air, fields, jet, notes, suction, verdict, water, wording
+from headwater.doubt import (
+    HIGH,
+    LOW,
+    MIDDLE,
+    PAPERS_POWER,
+    PAPERS_RPM,
+    RPM_SCATTER,
+    SIGMAS,
+    TACH_SCALE,
+    THRUST_DEDUCTION,
+    Holding,
+    Inputs,
+    Line,
+    Reckoning,
+    Seen,
+    Setting,
+    setting,
+    spread,
+)
+from headwater.fields import FIELD, Readings
+from headwater.jet import GRAVITY
+from headwater.notes import Bound
+from headwater.suction import State
+
+CONTRACT = 1
+CURVE_SPEEDS = [float(v) for v in range(26)]  # m/s
+_NODES = (0.0, 5.0, 11.0, 18.0, 25.0)  # m/s, where the curve's limits and bands are worked out in full
+_NODE_PASSES = 2  # rounds in finding a node's holding rpm: within 0.1 % of all
+_SEA_LEVEL_WATER = 288.15  # K, for the share of what she holds at sea level
+_COEFFICIENTS = (
+    "boat.wake_fraction",
+    "boat.ram_loss",
+    "boat.intake_loss",
+    "boat.nozzle_loss",
+    "boat.pump_efficiency",
+    "boat.driveline_efficiency",
+)
+# What the movers try, and by how much, in SI.
+_MOVER_STEPS = {
+    "place.altitude": (300.0, "m"),
+    "place.station_pressure": (-1000.0, "Pa"),
+    "place.water_temperature": (5.0, "K"),
+    "boat.shaft_depth": (0.05, "m"),
+    "plan.boat_speed": (2.0, "m/s"),
+}
+
+
+def answer(case: Any, units: str | Mapping[str, str] | None = None) -> dict[str, Any]:
+    """Whether the pump holds water: the whole answer to a case.
+
+    :param case: readings by key, quantities as strings with a unit
+    :param units: "us", "metric" or a unit for each quantity, for the sentences; by default what was typed
+    :returns: verdict, headline, reasons, values with bands, curve and the rest; with errors, no verdict and no values
+    Raises nothing: bad readings come back in ``errors``, all at once.
+    """
+    readings = fields.read(case)
+    if not readings.errors:
+        return _Answer(readings, wording.units_for(readings, units)).build()
+    return {
+        "contract": CONTRACT,
+        "verdict": None,
+        "headline": wording.errors_headline(readings.errors),
+        "ground": "unknown",
+        "reasons": [],
+        "cautions": [],
+        "values": {},
+        "equivalents": [],
+        "curve": {},
+        "ledger": [],
+        "movers": [],
+        "launch": None,
+        "errors": readings.errors,
+        "understood": readings.understood,
+    }
+
+
+def answer_json(text: str) -> str:
+    """The answer to a case given as JSON text, as JSON text."""
+    return _dump(answer(_load(text)))
+
+
+def _load(text: str) -> Any:
+    try:
+        return json.loads(text)
+    except (ValueError, RecursionError):
+        return text  # not a case: the fields say so
+
+
+def _dump(value: Any) -> str:
+    return json.dumps(value, allow_nan=False, ensure_ascii=False, separators=(",", ":"))
+
+
+def air_pressure(place: Mapping[str, Any]) -> float:
+    """Pressure at the water from a place's or a note's readings [Pa]."""
+    if "station_pressure" in place:
+        return float(place["station_pressure"])
+    if "altimeter_setting" in place:
+        return float(air.station_pressure(place["altimeter_setting"], place["altitude"]))
+    return float(air.standard_pressure(place["altitude"]))
+
+
+def pressure_doubt(place: Mapping[str, Any]) -> float:
+    """95 % half-width of the pressure at the water [Pa]: the barometer's, the altitude's, or both."""
+    barometer = FIELD["place.station_pressure"].tolerance
+    if "station_pressure" in place:
+        return float(barometer)
+    altitude = place["altitude"]
+    reach = FIELD["place.altitude"].tolerance
+    if place.get("altitude_from") == "phone":
+        reach = fields.PHONE_ALTITUDE
+    by_altitude = (air.standard_pressure(altitude - reach) - air.standard_pressure(altitude + reach)) / 2
+    return math.hypot(by_altitude, barometer) if "altimeter_setting" in place else float(by_altitude)
+
+
+def inputs_of(values: Mapping[str, Any]) -> Inputs:
+    """Central inputs by key, SI, from the readings of a case."""
+    boat, place = values["boat"], values["place"]
+    inputs = {key: float(boat[key.partition(".")[2]]) for key in _COEFFICIENTS}
+    for key in ("jets", "nozzle_diameter", "impeller_diameter", "shaft_depth", "wide_open_rpm", "engine_power", "gear_ratio"):
+        inputs["boat." + key] = float(boat[key])
+    inputs["hub_share"] = boat["hub_diameter"] / boat["impeller_diameter"]
+    inputs["place.air_pressure"] = air_pressure(place)
+    inputs["place.water_temperature"] = float(place["water_temperature"])
+    inputs["pressure_error"] = 0.0
+    inputs["tach"] = 1.0
+    return inputs
+
+
+def spans_of(values: Mapping[str, Any], given: Iterable[str], inputs: Inputs) -> dict[str, tuple[float, float]]:
+    """Low and high end of each uncertain input (95 % span), by key, SI."""
+    boat, papers = values["boat"], values["boat"]["rpm_from"] == "papers"
+    spans = {}
+    for key in _COEFFICIENTS:
+        field, here = FIELD[key], inputs[key]
+        assert field.span and field.default
+        low, high = (here * end / field.default for end in field.span)
+        spans[key] = (max(low, field.low), min(high, field.high))
+    for key in ("boat.nozzle_diameter", "boat.impeller_diameter"):
+        spans[key] = _about(inputs[key], FIELD[key].tolerance)
+    hub = FIELD["boat.hub_diameter"]
+    if "boat.hub_diameter" in given:
+        spans["hub_share"] = _about(inputs["hub_share"], hub.tolerance)
+    else:
+        spans["hub_share"] = fields.HUB_SHARE
+    depth = FIELD["boat.shaft_depth"].tolerance
+    spans["boat.shaft_depth"] = (boat["shaft_depth"] - depth, boat["shaft_depth"] + depth)
+    power = PAPERS_POWER if papers else FIELD["boat.engine_power"].tolerance
+    spans["boat.engine_power"] = _about(inputs["boat.engine_power"], power)
+    spans["boat.wide_open_rpm"] = _about(inputs["boat.wide_open_rpm"], PAPERS_RPM if papers else RPM_SCATTER)
+    warm = FIELD["place.water_temperature"].tolerance
+    here = inputs["place.water_temperature"]
+    spans["place.water_temperature"] = (max(here - warm, 273.15), here + warm)
+    doubt = pressure_doubt(values["place"])
+    spans["pressure_error"] = (-doubt, doubt)
+    if "suction_specific_speed" in boat:  # else the tach's scale is common to notes and plan and cancels
+        spans["tach"] = (1 - TACH_SCALE, 1 + TACH_SCALE)
+    return spans
+
+
+def _about(value: float, share: float) -> tuple[float, float]:
+    return value * (1 - share), value * (1 + share)
+
+
+def older(boat: Mapping[str, Any], note: Mapping[str, Any]) -> bool:
+    """Whether a note belongs to an older pump set-up than today's."""
+    if "set_up" in note:
+        return bool(note["set_up"] != boat.get("date"))
+    return "date" in note and "date" in boat and bool(note["date"] < boat["date"])
+
+
+def seen_of(values: Mapping[str, Any]) -> list[Seen]:
+    """The notes that count, ready for physics; one without a boat speed proves nothing and is left out."""
+    place, seen = values["place"], []
+    for index, note in enumerate(values["notes"]):
+        if "boat_speed" not in note:
+            continue
+        temperature = note["water_temperature"]
+        density = water.density(temperature)
+        warm = FIELD["place.water_temperature"].tolerance
+        by_heat = (water.vapor_pressure(temperature + warm) - water.vapor_pressure(temperature)) / (density * GRAVITY)
+        here = _altitude_alone(note) is not None and _altitude_alone(note) == _altitude_alone(place)
+        by_air = 0.0 if here else pressure_doubt(note) / (density * GRAVITY)
+        seen.append(
+            Seen(
+                index,
+                note["outcome"],
+                note["rpm"],
+                note["boat_speed"],
+                air_pressure(note),
+                water.vapor_pressure(temperature),
+                density,
+                math.hypot(by_heat, by_air) / SIGMAS,
+                here,
+                older(values["boat"], note),
+            )
+        )
+    return seen
+
+
+def _altitude_alone(place: Mapping[str, Any]) -> float | None:
+    if "station_pressure" in place or "altimeter_setting" in place:
+        return None
+    return float(place["altitude"])
+
+
+def _value(value: float | None, unit: str, low: float | None, high: float | None, mark: str, **more: bool) -> dict[str, Any]:
+    return {"value": value, "unit": unit, "low": low, "high": high, "mark": mark, **more}
+
+
+class _Answer:
+    """One answer in the making."""
+
+    def __init__(self, readings: Readings, units: Mapping[str, str]) -> None:
+        self.readings, self.values, self.units = readings, readings.values, units
+        self.boat, self.place, self.plan = (self.values[part] for part in ("boat", "place", "plan"))
+        self.running = self.boat["jets_running"]
+        self.speed = float(self.plan["boat_speed"])
+        self.typed = any(key in self.plan for key in ("power", "rpm", "throttle"))
+        self.wide_open = float(self.boat["wide_open_rpm"])
+        self.check = self.reckon(inputs_of(self.values), self.speed)
+        self.held_to = self.check.holding(self.speed)
+        standing = self.speed == 0
+        self.held_standing = self.held_to if standing else self.check.holding(0.0, min(self.check.rpm, self.wide_open))
+        self.lines = self._lines()
+        papers = self.boat["rpm_from"] == "papers" and "power" in self.plan
+        self.decision = verdict.steady(self.check, self.typed, papers, self.held_to.rpm if self.held_to else None)
+
+    def reckon(self, inputs: Inputs, speed: float) -> Reckoning:
+        fixed = self.boat.get("suction_specific_speed")
+        return Reckoning(
+            inputs,
+            spans_of(self.values, self.readings.given, inputs),
+            seen_of(self.values),
+            self.plan_rpm,
+            speed,
+            self.plan["reserve"],
+            math.log(fixed) if fixed else None,
+        )
+
+    def plan_rpm(self, inputs: Inputs) -> float:
+        """Engine rpm of the plan; wide open where none was typed."""
+        if "rpm" in self.plan:
+            return float(self.plan["rpm"])
+        if "power" in self.plan:
+            absorbed = jet.absorption(inputs["boat.engine_power"], inputs["boat.wide_open_rpm"], inputs["boat.jets"])
+            return float((self.plan["power"] / self.running / absorbed) ** (1 / 3))
+        return float(self.plan.get("throttle", 1.0) * inputs["boat.wide_open_rpm"])
+
+    def power(self, rpm: float) -> float:
+        """Engine power of the running units at an rpm [W]."""
+        return float(self.check.centre.unit.absorption * self.running * rpm**3)
+
+    def build(self) -> dict[str, Any]:
+        check, decision = self.check, self.decision
+        curve = self._curve()
+        equivalents = self._equivalents()
+        facts = self._facts(curve, equivalents)
+        return {
+            "contract": CONTRACT,
+            "verdict": decision.verdict,
+            "headline": wording.headline(decision.verdict, decision.code, facts, self.units),
+            "ground": decision.ground,
+            "reasons": wording.reasons(decision.why, facts, self.units),
+            "cautions": wording.cautions(self._caution_codes(), facts, self.units),
+            "values": self._values(facts),
+            "equivalents": equivalents,
+            "curve": curve,
+            "ledger": self._ledger(),
+            "movers": self._movers(),
+            "launch": None,
+            "errors": [],
+            "understood": self.readings.understood,
+        }
+
+    # Lines and curve
+
+    def _held_line(self, held: Holding, speed: float, bounds: list[Bound], steps: Sequence[float | None]) -> Line:
+        """The line that holds, with the band of what sets it."""
+        check = self.check
+        if check.fixed is not None:
+            return check.line(held.x, speed, held.kind, (0.0, 0.0), (0, 0), held.rpm, steps)
+        near = min((b for b in bounds if not b.hint), key=lambda b: abs(b.x - held.x))
+        own = SIGMAS * near.sigma
+        follows = near.note if held.kind in ("proven", "let_go", "disagree") else (0, 0)
+        return check.line(held.x, speed, held.kind, (own, own), follows, held.rpm, steps)
+
+    def _lines_at(self, speed: float, held: Holding | None, exact: bool) -> dict[str, Line]:
+        """The lines that can be drawn at a boat speed: holding, let_go, flare.
+
+        :param exact: work each line's band out at its own rpm, not all at that which holds
+        """
+        check, at = self.check, self.check.centre
+        if not check.has_head:
+            return {}
+        rpm = held.rpm if held else self.wide_open
+        state = suction.state(at.unit, at.head, at.density, rpm, speed)
+        known = check.known(speed, state.flow / rpm)
+        shared = None if exact else held.steps if held else check.asked_steps(rpm, speed)
+
+        def line(x: float, kind: str, own: tuple[float, float]) -> Line:
+            rpm = check.rpm_at(x, speed)
+            return check.line(x, speed, kind, own, (0, 2), rpm, shared or check.asked_steps(rpm, speed))
+
+        lines = {}
+        if held:
+            lines["holding"] = self._held_line(held, speed, known.bounds, shared or check.asked_steps(rpm, speed))
+        if check.capped:
+            low, middle, high = (check.limit(known, share) for share in (LOW, MIDDLE, HIGH))
+            if low is not None and middle is not None and high is not None:
+                lines["let_go"] = line(middle, "let_go", (middle - low, high - middle))
+        flare = check.flare(known)
+        if flare:
+            belief = notes.learn(known.flare_bounds) if flare.learned else known.belief
+            own = (0.0, 0.0)
+            if belief and check.fixed is None:
+                low, middle, high = (belief.quantile(share) for share in (LOW, MIDDLE, HIGH))
+                own = (middle - low, high - middle)
+            lines["flare"] = line(flare.x, "flare", own)
+        return lines
+
+    def _lines(self) -> dict[str, Line]:
+        return self._lines_at(self.speed, self.held_to, exact=True)
+
+    def _curve(self) -> dict[str, Any]:
+        """The lines from 0 to 25 m/s: each rpm solved at each speed, limit and band interpolated between nodes."""
+        check, nodes, held = self.check, [], self.held_standing
+        for speed in _NODES:
+            if speed:
+                held = check.holding(speed, held.rpm if held else None, _NODE_PASSES)
+            nodes.append(self._lines_at(speed, held, exact=False))
+        curve: dict[str, Any] = {"boat_speed": CURVE_SPEEDS}
+        for name in ("holding", "let_go", "flare"):
+            drawn = all(name in node for node in nodes)
+            rpm, power = self._curve_line([node[name] for node in nodes]) if drawn else (None, None)
+            curve[name + "_rpm"], curve[name + "_power"] = rpm, power
+        curve["engine_limit_rpm"] = self.wide_open
+        curve["engine_limit_power"] = self.power(self.wide_open)
+        return curve
+
+    def _curve_line(self, nodes: list[Line]) -> tuple[dict[str, list[float]], dict[str, list[float]]]:
+        rpm: dict[str, list[float]] = {"value": [], "low": [], "high": []}
+        power: dict[str, list[float]] = {"value": [], "low": [], "high": []}
+        for k, (first, second) in enumerate(pairwise(nodes)):
+            v0, v1 = _NODES[k], _NODES[k + 1]
+            ends = [
+                (first.low / first.rpm, second.low / second.rpm),
+                (first.high / first.rpm, second.high / second.rpm),
+                (first.power_low, second.power_low),
+                (first.power_high, second.power_high),
+            ]
+            for speed in CURVE_SPEEDS[int(v0) : int(v1) + (k == len(nodes) - 2)]:
+                share = (speed**2 - v0**2) / (v1**2 - v0**2)  # what moves the limit goes with the ram head
+                value = self.check.rpm_at(first.x + share * (second.x - first.x), speed)
+                at_rpm = self.power(value)
+                rpm_low, rpm_high, power_low, power_high = (one + share * (two - one) for one, two in ends)
+                rpm["value"].append(value)
+                rpm["low"].append(value * rpm_low)
+                rpm["high"].append(value * rpm_high)
+                power["value"].append(at_rpm)
+                power["low"].append(at_rpm * power_low)
+                power["high"].append(at_rpm * power_high)
+        return rpm, power
+
+    def _speed_for(self, rpm: float, curve: Mapping[str, Any]) -> float | None:
+        """Boat speed from which an rpm is a go; 0 at rest, none where it never is."""
+        if not self.held_standing or curve["holding_rpm"] is None:
+            return None
+        if self.held_standing.rpm >= rpm:
+            return 0.0
+        holds = curve["holding_rpm"]["value"]
+        after = next((i for i, held in enumerate(holds) if held >= rpm), None)
+        if after is None:
+            return None
+        v0, v1 = CURVE_SPEEDS[after - 1], CURVE_SPEEDS[after]
+        rise = (holds[after] - holds[after - 1]) / (v1 - v0)
+        speed = v0 + (rpm - holds[after - 1]) / rise
+        found = self.check.holding(speed, rpm)
+        return max(speed + (rpm - found.rpm) / rise, 0.0) if found else None
+
+    # Parts of the answer
+
+    def _equivalents(self) -> list[dict[str, Any]]:
+        check, at, out = self.check, self.check.centre, []
+        for i, seen in enumerate(check.seen):
+            if not check.has_head:
+                break
+            rpm = check.rpm_at(check.xs[i], self.speed)
+            state = suction.state(at.unit, at.head, at.density, rpm, self.speed)
+            bound = next(b for b in check.bounds(self.speed, state.flow / rpm) if b.note == i)
+            own = SIGMAS * bound.sigma
+            steps = check.asked_steps(rpm, self.speed)
+            line = check.line(bound.x, self.speed, seen.outcome, (own, own), i, rpm, steps)
+            out.append(
+                {
+                    "note": seen.note,
+                    "outcome": seen.outcome,
+                    "rpm_there": seen.rpm,
+                    "rpm_here": rpm,
+                    "low": line.low,
+                    "high": line.high,
+                }
+            )
+        return out
+
+    def _facts(self, curve: Mapping[str, Any], equivalents: list[dict[str, Any]]) -> dict[str, Any]:
+        """What the sentences need, SI."""
+        check = self.check
+        facts: dict[str, Any] = {
+            "typed": self.typed,
+            "boat_speed": self.speed,
+            "plan_rpm": check.rpm,
+            "plan_power": self.power(check.rpm),
+            "wide_open_rpm": self.wide_open,
+            "holding_rpm": self.held_to.rpm if self.held_to else None,
+            "standing_rpm": self.held_standing.rpm if self.held_standing else None,
+            "let_go_rpm": self.lines["let_go"].rpm if "let_go" in self.lines else None,
+            "full_speed": self._speed_for(self.wide_open, curve),
+            "reserve": self.plan["reserve"],
+            "teach": self._teach(),
+            "note": None,
+            "holding_rpm_share": self._share(0.5)[0],
+            "holding_power_share": self._share(1.5)[0],
+        }
+        asks_speed = self.typed and self.decision.verdict != "go"
+        facts["plan_speed"] = self._speed_for(check.rpm, curve) if asks_speed else facts["full_speed"]
+        lead = self._lead(equivalents)
+        if lead:
+            facts["note"] = {**lead, "label": self.values["notes"][lead["note"]].get("label", ""), "place": self.place.get("label", "")}
+        if check.contradiction:
+            facts["disagree"] = [self._named(check.seen[i].note) for i in check.contradiction]
+        facts["off"] = [self._named(note) for note in check.without_head]
+        facts["speedless"] = [self._named(i) for i, note in enumerate(self.values["notes"]) if "boat_speed" not in note]
+        return facts
+
+    def _named(self, index: int) -> dict[str, Any]:
+        note = self.values["notes"][index]
+        return {"index": index, "rpm": note["rpm"], "outcome": note["outcome"], "label": note.get("label", "")}
+
+    def _lead(self, equivalents: list[dict[str, Any]]) -> dict[str, Any] | None:
+        """The equivalent that leads the answer: the best held note's; without one the lowest of what did not hold."""
+        check = self.check
+        known = check.known_at_plan
+        for row, seen in zip(equivalents, check.seen, strict=False):
+            if known.proven and seen.note == check.seen[known.proven.note].note:
+                return row
+        rest = [row for row, seen in zip(equivalents, check.seen, strict=False) if not seen.hint and seen.outcome != "held"]
+        return min(rest, key=lambda row: row["rpm_here"]) if rest else None
+
+    def _teach(self) -> dict[str, Any] | None:
+        """The one observation that would teach most: its code and the rpm to try here; none when little is left."""
+        check = self.check
+        if check.fixed is not None or not check.has_head:
+            return None
+        standing = check.known(0.0, check.flow_at_rest)
+        held, lid = standing.proven, standing.lid
+        if held is None and lid is None:
+            return {"code": "teach_first"}
+        if held is None and lid is not None:
+            return {"code": "teach_lower", "rpm": notes.FLARE_EASE * check.rpm_at(lid.x, 0.0)}
+        assert held is not None
+        holds = check.rpm_at(held.x, 0.0)
+        if lid is None:
+            return {"code": "teach_upper", "rpm": holds}
+        lets_go = check.rpm_at(lid.x, 0.0)
+        if lets_go < holds:
+            return {"code": "teach_again", "rpm": lets_go}
+        if self.held_standing and self.held_standing.kind == "chance":
+            return {"code": "teach_repeat", "rpm": self.held_standing.rpm}
+        return {"code": "teach_between", "rpm": (holds + lets_go) / 2} if lets_go > 1.1 * holds else None
+
+    def _caution_codes(self) -> list[str]:
+        check, codes = self.check, []
+        if check.rpm > self.wide_open * (1 + 1e-9):
+            codes.append("over_wide_open")
+        if check.contradiction:
+            codes.append("notes_disagree")
+        if check.stop_dropped or check.without_head:
+            codes.append("measurement_off")
+        if any("boat_speed" not in note for note in self.values["notes"]):
+            codes.append("note_needs_speed")
+        if check.seen and not check.today:
+            codes.append("older_notes_only")
+        elif any(note.hint for note in check.seen):
+            codes.append("older_notes")
+        if check.fixed is not None and self._fixed_disagrees():
+            codes.append("fixed_disagrees")
+        if "station_pressure" in self.place and "altitude" not in self.place:
+            codes.append("barometer_at_water")
+        if self.boat["rpm_from"] == "papers":
+            codes.append("papers")
+        return codes
+
+    def _fixed_disagrees(self) -> bool:
+        check = self.check
+        assert check.fixed is not None
+        for x, sigma, note in zip(check.xs, check.sigmas, check.seen, strict=True):
+            crossed = check.fixed - x if note.outcome == "let_go" else x - check.fixed
+            if not note.hint and crossed > SIGMAS * sigma:
+                return True
+        return False
+
+    def _share(self, power: float) -> tuple[float, float, float]:
+        """What any pump holds at rest here over what it holds at sea level in 15 C water, with its band."""
+
+        def share(at: Setting) -> float:
+            pressure = water.vapor_pressure(_SEA_LEVEL_WATER)
+            level = suction.head_at_rest(air.STANDARD_PRESSURE, pressure, water.density(_SEA_LEVEL_WATER), at.submergence)
+            return max(at.head / level, 0.0) ** power if level > 0 else 0.0
+
+        centre = share(self.check.centre)
+        low, high = spread(centre, (share(end.setting) for end in self.check.ends))
+        return centre, max(low, 0.0), high
+
+    def _values(self, facts: Mapping[str, Any]) -> dict[str, Any]:
+        check = self.check
+        out = {
+            **self._here(),
+            **self._at_plan(),
+            **self._against_limit(),
+            "holding_rpm": None,
+            "holding_power": None,
+            "let_go_rpm": None,
+            "let_go_power": None,
+            "flare_rpm": None,
+            "flare_power": None,
+        }
+        for name, line in self.lines.items():
+            out_of_reach = {"capped": True} if line.rpm > self.wide_open else {}
+            power = self.power(line.rpm)
+            mark = "D" if name == "holding" and not self.speed and check.fixed is None else "P" if name == "flare" else "M"
+            out[name + "_rpm"] = _value(line.rpm, "rev/min", line.low, line.high, mark, **out_of_reach)
+            low, high = power * line.power_low, power * line.power_high
+            out[name + "_power"] = _value(power, "W", low, high, mark, **out_of_reach)
+        for name, power in (("holding_rpm_share", 0.5), ("holding_power_share", 1.5)):
+            centre, low, high = self._share(power)
+            out[name] = _value(centre, "1", low, high, "D")
+        full = facts["full_speed"]
+        out["full_speed"] = None if full is None else _value(full, "m/s", None, None, "M")
+        return out
+
+    def _here(self) -> dict[str, Any]:
+        """The water and the air here."""
+        at, pressure = self.check.centre, self.check.inputs["place.air_pressure"]
+        doubt = pressure_doubt(self.place)
+        warm = FIELD["place.water_temperature"].tolerance
+        here = self.check.inputs["place.water_temperature"]
+        cold, hot = max(here - warm, 273.15), here + warm
+        boils = [water.boiling_temperature(p) for p in (pressure, pressure - doubt, pressure + doubt)]
+        return {
+            "vapor_pressure": _value(at.vapor_pressure, "Pa", water.vapor_pressure(cold), water.vapor_pressure(hot), "V"),
+            "boiling_temperature": _value(boils[0], "K", boils[1], boils[2], "V"),
+            "air_pressure": _value(pressure, "Pa", pressure - doubt, pressure + doubt, "V"),
+            "water_density": _value(at.density, "kg/m3", *sorted((water.density(cold), water.density(hot))), "V"),
+        }
+
+    def _at_plan(self) -> dict[str, Any]:
+        """What the plan makes of one unit, and of the boat."""
+        check, running = self.check, self.running
+
+        def band(get: Callable[[Setting, State, float], float], unit: str, mark: str) -> dict[str, Any]:
+            centre = get(check.centre, check.state, check.rpm)
+            ends = [get(at, state, rpm) for at, state, rpm in check.plan_states]
+            if centre <= 0 or min(ends) <= 0:
+                return _value(centre, unit, *spread(centre, ends), mark)
+            low, high = spread(0.0, [math.log(end / centre) for end in ends])
+            return _value(centre, unit, centre * math.exp(low), centre * math.exp(high), mark)
+
+        def push(at: Setting, state: State, deduction: float) -> float:
+            return float(running * jet.thrust(at.unit, state.jet_speed, self.speed, at.density, deduction))
+
+        least, usual, most = THRUST_DEDUCTION
+        thrust = push(check.centre, check.state, usual)
+        ends = [push(at, state, usual) for at, state, _ in check.plan_states]
+        deducted = [push(check.centre, check.state, end) for end in (most, least)]
+        asked = None
+        if check.asked is not None:
+            low, high = (math.exp(check.asked + side) for side in spread(0.0, check.plan_steps))
+            asked = _value(math.exp(check.asked), "metric", low, high, "M")
+        return {
+            "jet_speed": band(lambda at, state, rpm: state.jet_speed, "m/s", "M"),
+            "flow_rate": band(lambda at, state, rpm: state.flow, "m3/s", "M"),
+            "impeller_inlet_speed": band(lambda at, state, rpm: state.inlet_speed, "m/s", "M"),
+            "npsh_available": band(lambda at, state, rpm: state.npsh_available, "m", "M"),
+            "inlet_static_pressure": band(
+                lambda at, state, rpm: suction.static_pressure(state, at.vapor_pressure, at.density), "Pa", "M"
+            ),
+            "thrust": _value(thrust, "N", *spread(thrust, [*ends, *deducted]), "M"),
+            "planned_power": band(lambda at, state, rpm: running * state.power, "W", "P"),
+            "planned_rpm": band(lambda at, state, rpm: rpm, "rev/min", "P"),
+            "suction_specific_speed_asked": asked,
+        }
+
+    def _against_limit(self) -> dict[str, Any]:
+        """The plan against what is known of the pump's limit: NPSHR, margin, ratio and S.
+
+        While nothing bounds the pump from above, each has but one side.
+        """
+        check = self.check
+        learned_ends = [*check.learned_ends, (0.0, 0.0, 0.0), (0.0, 0.0, 0.0)]
+        quantiles = [check.limit(check.known_at_plan, share) for share in (LOW, MIDDLE, HIGH)]
+        if quantiles[1] is None or not (check.fixed is not None or check.today):
+            return dict.fromkeys(("npsh_required", "margin", "ratio", "suction_specific_speed"))
+
+        def side(get: Callable[[Setting, State, float], float], which: int, limit: int) -> float:
+            """The low (0) or high (1) side of a result, where the limit's low (0) or high (2) quantile makes it."""
+            base = get(check.centre, check.state, quantiles[limit])
+            middle = get(check.centre, check.state, quantiles[1])
+            own = abs(middle - base)
+            ends = [
+                None if learned is None else middle + get(at, state, quantiles[limit] + learned[limit]) - base
+                for (at, state, _), learned in zip(check.plan_states, learned_ends, strict=True)
+            ]
+            return spread(middle, ends, low=own, high=own)[which]
+
+        def required(at: Setting, state: State, x: float) -> float:
+            return float(suction.npsh_required(state, math.exp(x) / at.tach))
+
+        def margin(at: Setting, state: State, x: float) -> float:
+            return float(state.npsh_available) - required(at, state, x)
+
+        def limit(at: Setting, state: State, x: float) -> float:
+            return x
+
+        capped, middle = check.capped, quantiles[1]
+        log_low, log_high = check.plan_ratio
+        ratio = None if check.asked is None else math.exp(4 / 3 * (middle - check.asked))
+        demand = required(check.centre, check.state, middle)
+        s_low, s_high = math.exp(side(limit, 0, 0)), math.exp(side(limit, 1, 2)) if capped else None
+        return {
+            "npsh_required": _value(
+                demand if capped else None, "m", side(required, 0, 2) if capped else None, side(required, 1, 0), "M"
+            ),
+            "margin": _value(
+                margin(check.centre, check.state, middle) if capped else None,
+                "m",
+                side(margin, 0, 0),
+                side(margin, 1, 2) if capped else None,
+                "M",
+            ),
+            "ratio": _value(
+                ratio if capped else None,
+                "1",
+                None if log_low is None else math.exp(log_low),
+                None if log_high is None else math.exp(log_high),
+                "M",
+            ),
+            "suction_specific_speed": _value(math.exp(middle) if capped else None, "metric", s_low, s_high, "M"),
+        }
+
+    def _ledger(self) -> list[dict[str, Any]]:
+        """An account of head at the plan, in metres, that sums to the margin; at rest of the throttle no push."""
+        check, at = self.check, self.check.centre
+        weight = at.density * GRAVITY
+        middle = check.limit(check.known_at_plan, MIDDLE) if check.capped else None
+        rows = [
+            ("air", self.check.inputs["place.air_pressure"] / weight),
+            ("boiling", -at.vapor_pressure / weight),
+            ("depth", at.submergence),
+            ("ram", jet.ram(at.unit, self.speed) / (2 * GRAVITY)),
+            ("intake", -suction.inlet_loss(at.unit, check.state.inlet_speed)),
+        ]
+        if middle is not None:
+            rows.append(("demand", -suction.npsh_required(check.state, math.exp(middle))))
+        rows.append(("margin" if middle is not None else "available", sum(value for _, value in rows)))
+        return [{"term": term, "value": float(value), "unit": "m"} for term, value in rows]
+
+    def _movers(self) -> list[dict[str, Any]]:
+        """How far one step in each reading moves the rpm that she holds, largest first."""
+        if not self.held_to:
+            return []
+        check, (rpm, x, *_) = self.check, self.held_to
+        out = []
+        for key, (step, unit) in _MOVER_STEPS.items():
+            part, _, name = key.partition(".")
+            if name not in self.values[part] or (name == "altitude" and "station_pressure" in self.place):
+                continue
+            moved = {**self.values, part: {**self.values[part], name: self.values[part][name] + step}}
+            at = setting(inputs_of(moved))
+            if at.head <= 0:
+                continue
+            learned = check.learned_step(at)
+            held = float(suction.rpm_at(at.unit, at.head, at.density, moved["plan"]["boat_speed"], math.exp(x + learned)))
+            change = held - rpm
+            out.append(
+                {
+                    "field": key,
+                    "step": step,
+                    "unit": unit,
+                    "holding_rpm_change": change,
+                    "text": wording.mover(key, step, change, self.units),
+                }
+            )
+        return sorted(out, key=lambda row: -abs(row["holding_rpm_change"]))
