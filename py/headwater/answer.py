@@ -6,7 +6,7 @@ from collections.abc import Callable, Iterable, Mapping, Sequence
 from itertools import pairwise
 from typing import Any
 
-from headwater import air, fields, jet, notes, suction, verdict, water, wording
+from headwater import air, fields, jet, notes, share, suction, verdict, water, wording
 from headwater.doubt import (
     HIGH,
     LOW,
@@ -26,6 +26,7 @@ from headwater.doubt import (
     setting,
     spread,
 )
+from headwater.errors import BadReading
 from headwater.fields import FIELD, Readings
 from headwater.jet import GRAVITY
 from headwater.notes import Bound
@@ -700,3 +701,33 @@ class _Answer:
                 }
             )
         return sorted(out, key=lambda row: -abs(row["holding_rpm_change"]))
+
+
+def shown(case: Any, units: str | Mapping[str, str] | None = None) -> dict[str, Any]:
+    """The answer to a case and the sheet of sentences that shows it."""
+    result = answer(case, units)
+    return {"answer": result, "sheet": wording.sheet(result, wording.units_for(fields.read(case), units))}
+
+
+def reply(text: str) -> str:
+    """The phone's door: a request as JSON text, its reply as JSON text. Never raises.
+
+    Asks: ``check`` a case, make a ``link`` of one, ``open`` a link's fragment, say what a typed reading is
+    ``shown`` as in its field's other common unit.
+    """
+    request = _load(text)
+    if not isinstance(request, dict):
+        request = {}
+    ask = request.get("ask")
+    try:
+        if ask == "check":
+            return _dump(shown(request.get("case"), request.get("units")))
+        if ask == "link":
+            return _dump({"fragment": share.encode(request.get("case"))})
+        if ask == "open":
+            return _dump({"case": share.decode(request.get("fragment"))})
+        if ask == "shown":
+            return _dump({"other": fields.other_unit(request.get("field"), request.get("text"), request.get("unit")), "error": None})
+    except BadReading as bad:
+        return _dump({"error": {**bad.as_dict(), "text": wording.error_text(bad.as_dict())}})
+    return _dump({"error": {"field": "ask", "text": "Ask to check, link, open or shown."}})

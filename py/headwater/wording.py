@@ -1,0 +1,464 @@
+"""What to say: codes and figures become sentences, here and nowhere else."""
+
+import math
+from collections.abc import Iterable, Mapping
+from typing import Any
+
+from headwater import units as unit_table
+from headwater.sources import SOURCES
+
+Units = Mapping[str, str]
+Facts = Mapping[str, Any]
+
+STATES = {"go": "GO", "caution": "CAUTION", "no-go": "NO-GO"}
+NOT_CHECKED = "Not checked: the run, steering, engine, crew."
+LETS_GO = "Lets go? To idle, count two, feed in again 200 rpm lower."
+CAUTIONS_ALWAYS = (
+    "Life jackets on, kill-switch lanyard clipped.",
+    "Scout the run first.",
+    "Bucket up and helm straight before power.",
+    "After backing, wait for the wash to clear.",
+    "Pump stopped means no steering.",
+    "Beached or on gravel: engine off, pole to knee-deep water.",
+    "Grate not clean: engine off, clear it.",
+    "Local rules, licences and your own eyes come first.",
+)
+GROUND = {
+    "done_before": "Done before: a note that held asked as much.",
+    "new": "New ground: no note that held asked as much.",
+    "over": "Over: past what this pump does here.",
+    "unknown": "Unknown: no note of this pump as it is now.",
+}
+
+
+def units_for(readings: Any, units: str | Units | None) -> dict[str, str]:
+    """Display unit of each quantity: what was asked for, else what was typed, else what goes with it."""
+    typed = dict(readings.units)
+    system = units if isinstance(units, str) else "us" if _typed_us(typed) else "metric"
+    chosen = dict(unit_table.SYSTEMS.get(system, unit_table.SYSTEMS["metric"]))
+    if units is None:
+        chosen.update(typed)
+    elif not isinstance(units, str):
+        chosen.update(units)
+    return chosen
+
+
+def _typed_us(typed: Units) -> bool:
+    return any(symbol in ("ft", "in", "F", "mph", "inHg", "psi") for symbol in typed.values())
+
+
+class _Say:
+    """Figures as the person reads them."""
+
+    def __init__(self, units: Units) -> None:
+        self.units = units
+
+    def show(self, value: float, quantity: str, rounded: str | None = None) -> str:
+        return unit_table.show(value, quantity, self.units[quantity], rounded)
+
+    def number(self, value: float, quantity: str, rounded: str | None = None) -> str:
+        return unit_table.number(value, quantity, self.units[quantity], rounded)
+
+    def rpm(self, value: float, rounded: str | None = None) -> str:
+        return self.show(value, "rotation", rounded)
+
+    def holds(self, value: float) -> str:
+        """An rpm to keep to, rounded down so that what is read is still a go."""
+        return self.rpm(value, "down")
+
+    def from_speed(self, value: float) -> str:
+        """A boat speed to wait for, rounded up."""
+        return self.show(value, "speed", "up")
+
+    def span(self, low: float, high: float, quantity: str) -> str:
+        return f"{self.number(low, quantity)} to {self.number(high, quantity)}"
+
+
+# The headline
+
+
+def headline(verdict: str, code: str, facts: Facts, units: Units) -> dict[str, Any]:
+    """State and instruction in one line, with the figures it rests on."""
+    say = _Say(units)
+    text = f"{STATES[verdict]} · {_instruction(code, facts, say)}"
+    kept = ("plan_rpm", "holding_rpm", "standing_rpm", "let_go_rpm", "plan_speed", "full_speed")
+    return {"code": code, "text": text, "values": {key: facts[key] for key in kept}}
+
+
+def errors_headline(errors: list[dict[str, Any]]) -> dict[str, Any]:
+    """In place of a verdict where readings are missing or wrong."""
+    count = len(errors)
+    text = "One reading needs another look" if count == 1 else f"{count} readings need another look"
+    return {"code": "errors", "text": text, "values": {"count": count}}
+
+
+def _instruction(code: str, facts: Facts, say: _Say) -> str:
+    holding, standing, speed = facts["holding_rpm"], facts["standing_rpm"], facts["plan_speed"]
+    where = "standing" if not facts["boat_speed"] else f"at {say.show(facts['boat_speed'], 'speed')}"
+    if code == "holds":
+        return "the pump holds"
+    if code == "keep_to":
+        text = f"{where}, keep it to {say.holds(holding)}"
+        return text + (f"; {say.rpm(facts['plan_rpm'])} from {say.from_speed(speed)}" if speed else "")
+    if code == "up_to":
+        text = f"{where}: up to {say.holds(holding)}"
+        full = facts["full_speed"]
+        return text + (f". Wide open from {say.from_speed(full)}." if full else ". Not wide open at any speed.")
+    if code == "teach":
+        return "I don't know this pump yet"
+    if code == "none_held":
+        return "nothing has held yet"
+    if code == "papers":
+        return f"go by the tach: {say.holds(facts['plan_rpm'])}"
+    if code == "over":
+        if standing is None:
+            return "past this pump"
+        text = f"she holds {say.holds(standing)} standing"
+        return text + (f"; {say.rpm(facts['plan_rpm'])} from {say.from_speed(speed)}" if speed else "")
+    if code == "under_idle":
+        return "she holds less than idle here"
+    return "no head left at the pump"
+
+
+# Reasons and cautions
+
+
+def reasons(codes: Iterable[str], facts: Facts, units: Units) -> list[dict[str, Any]]:
+    """What leads the answer, what decided it, and what would teach most."""
+    say = _Say(units)
+    out = [_lead(facts, say)]
+    out += [{"code": code, "text": _reason(code, facts, say), "values": {}} for code in codes]
+    if facts["teach"]:
+        teach = facts["teach"]
+        out.append({"code": teach["code"], "text": _teach(teach, say), "values": {"rpm": teach.get("rpm")}})
+    return out
+
+
+def _at(label: str, fallback: str) -> str:
+    return f"at {label}" if label else fallback
+
+
+def _lead(facts: Facts, say: _Say) -> dict[str, Any]:
+    note = facts["note"]
+    if not note:
+        share = facts["holding_rpm_share"]
+        fewer = round((1 - share) * 100)
+        if fewer >= 1:
+            text = f"Any pump holds {fewer} % fewer rpm standing here than at sea level, whatever she holds there."
+        elif fewer <= -1:
+            text = f"Any pump holds {-fewer} % more rpm standing here than at sea level, whatever she holds there."
+        else:
+            text = "Any pump holds as many rpm standing here as at sea level."
+        values = {"holding_rpm_share": share, "holding_power_share": facts["holding_power_share"]}
+        return {"code": "share", "text": text, "values": values}
+    there = say.number(note["rpm_there"], "rotation")
+    here = say.number(note["rpm_here"], "rotation", "down" if note["outcome"] == "held" else None)
+    place = _at(note["label"], "there")
+    tail = f" at {say.show(facts['boat_speed'], 'speed')}" if facts["boat_speed"] else ""
+    if note["outcome"] == "held":
+        text = f"Your {there} {place} is {here} here{tail}."
+    elif note["outcome"] == "flared":
+        text = f"Her revs ran up at {there} {place}: that is {here} here{tail}."
+    else:
+        text = f"She let go at {there} {place}: that is {here} here{tail}."
+    return {"code": "equivalent", "text": text, "values": dict(note)}
+
+
+def _reason(code: str, facts: Facts, say: _Say) -> str:
+    if code == "disagree":
+        held, gone = facts["disagree"]
+        return (
+            f"Notes disagree: {_note(held, say)} held, {_note(gone, say)} let go, and the first asked more. "
+            "Air, weed on the grate or a misread tach are the likely causes."
+        )
+    if code == "chance":
+        return "What held lies close under what let go. Hold it once more, or stay lower."
+    return {
+        "done_before": "She has done this: the plan asks no more of the pump than a note that held.",
+        "reserve": "New ground, but known from both sides and with its reserve.",
+        "past_proven": "The plan asks more of the pump than any note that held.",
+        "no_reserve": "Too near the limit you fixed for this pump.",
+        "let_go_here": "She has let go at no more than this.",
+        "past_limit": "Past the pump's limit, even on its kindest reading.",
+        "boils_ahead": "The water would boil ahead of the impeller.",
+        "no_head": "The pump has no head left here: the air is thin, the water warm or the shaft high.",
+        "papers": "Power and rpm are out of papers. Read the tach wide open, then plan in rpm.",
+        "unknown": "No note of this pump as it is now.",
+    }[code]
+
+
+def _note(named: Mapping[str, Any], say: _Say) -> str:
+    text = say.rpm(named["rpm"])
+    return f"{text} {_at(named['label'], '')}".strip()
+
+
+def _teach(teach: Mapping[str, Any], say: _Say) -> str:
+    code = teach["code"]
+    if code == "teach_first":
+        return (
+            "First job, standing, deep clean water, clean grate: roll up slowly until the revs run up "
+            "or she holds wide open. Note both rpm."
+        )
+    rpm = say.holds(teach["rpm"])
+    return {
+        "teach_lower": f"Would teach most: hold {rpm} standing and note it.",
+        "teach_upper": f"Would teach most: standing, roll up slowly past {rpm} until the revs run up. Note the rpm.",
+        "teach_again": f"Would teach most: roll up slowly standing to {rpm} in clean water, and note what she does.",
+        "teach_repeat": f"Would teach most: hold {rpm} once more and note it.",
+        "teach_between": f"Would teach most: standing, roll up slowly to {rpm} and note what she does.",
+    }[code]
+
+
+def cautions(codes: Iterable[str], facts: Facts, units: Units) -> list[dict[str, Any]]:
+    """One line each, only where it helps."""
+    say = _Say(units)
+    return [{"code": code, "text": _caution(code, facts, say)} for code in codes]
+
+
+def _caution(code: str, facts: Facts, say: _Say) -> str:
+    if code == "over_wide_open":
+        return f"The plan is past wide open: she turns {say.rpm(facts['wide_open_rpm'])} here."
+    if code == "notes_disagree":
+        held, gone = facts["disagree"]
+        return f"Notes disagree: {_note(held, say)} held against {_note(gone, say)} let go."
+    if code == "note_needs_speed":
+        which = ", ".join(_note(named, say) for named in facts["speedless"])
+        return f"Standing or running? A note without boat speed proves nothing: {which}."
+    if code == "measurement_off":
+        which = ", ".join(_note(named, say) for named in facts["off"])
+        text = "A measurement is off: what she has done should not be possible. Check nozzle, hub, wear ring and power"
+        return f"{text}; see {which}." if which else f"{text}."
+    return {
+        "older_notes_only": "All notes are of an older pump set-up. They are hints and prove nothing now.",
+        "older_notes": "Notes of an older pump set-up count as hints only.",
+        "fixed_disagrees": "A note disagrees with the suction specific speed you fixed. The fixed one is used.",
+        "barometer_at_water": "The barometer must read at the water, not reduced to sea level. Add the altitude to check it.",
+        "papers": "Rpm and power are out of papers: the spans are wider.",
+    }[code]
+
+
+_MOVER_WORDS = {
+    "place.altitude": ("higher", "lower"),
+    "place.station_pressure": ("more pressure", "less pressure"),
+    "place.water_temperature": ("warmer water", "colder water"),
+    "boat.shaft_depth": ("deeper shaft", "shallower shaft"),
+    "plan.boat_speed": ("faster through the water", "slower through the water"),
+}
+_MOVER_QUANTITY = {
+    "place.altitude": "altitude",
+    "place.station_pressure": "pressure",
+    "place.water_temperature": "temperature_step",
+    "boat.shaft_depth": "length",
+    "plan.boat_speed": "speed",
+}
+
+
+def mover(field: str, step: float, change: float, units: Units) -> str:
+    """What one step in a reading does to the rpm that she holds."""
+    say = _Say(units)
+    quantity = _MOVER_QUANTITY[field]
+    amount = say.show(abs(step), quantity)
+    word = _MOVER_WORDS[field][0 if step > 0 else 1]
+    return f"{amount} {word}: {say.rpm(abs(change))} {'more' if change > 0 else 'fewer'}"
+
+
+# The sheet: all that a screen or the command line shows
+
+_LINES = (
+    ("holding", "holds", "Holds"),
+    ("flare", "flare", "Revs run up"),
+    ("let_go", "lets_go", "Lets go"),
+)
+_LEDGER = {
+    "air": "Air over the water",
+    "boiling": "less boiling",
+    "depth": "plus depth over the blades",
+    "ram": "plus ram of the moving boat",
+    "intake": "less the intake",
+    "demand": "less what the impeller asks",
+    "margin": "leaves",
+    "available": "leaves for the impeller",
+}
+# Title, symbol, formula, value, quantity it is shown in, source.
+_WORKING = (
+    ("Air pressure at the water", "p_atm", "p0 (1 - 0.0065 H/288.15)^5.25588", "air_pressure", "pressure", "ussa1976"),
+    ("Boiling pressure of the water", "p_v", "saturation line, region 4", "vapor_pressure", "pressure", "if97"),
+    ("Boiling temperature under this air", "T_s", "saturation line, region 4", "boiling_temperature", "temperature", "if97"),
+    ("Density of the water", "rho", "rational polynomial in t", "water_density", "density", "kell1975"),
+    ("Rpm planned", "N", "as typed", "planned_rpm", "rotation", "affinity"),
+    ("Power absorbed", "P", "c N^3", "planned_power", "power", "affinity"),
+    ("Jet speed", "V_j", "rho g Q H = eta_p eta_m P", "jet_speed", "speed", "terwisga1996"),
+    ("Water through one unit", "Q", "A_n V_j", "flow_rate", "flow", "terwisga1996"),
+    ("Speed ahead of the impeller", "V_1", "Q/A_1", "impeller_inlet_speed", "speed", "terwisga1996"),
+    ("Thrust of the boat", "T", "(1 - t) rho Q (V_j - (1 - w) V_0)", "thrust", "force", "eslamdoost2018"),
+    (
+        "Head available",
+        "NPSHA",
+        "(p_atm - p_v)/(rho g) + z + (1 - zeta)((1 - w) V_0)^2/2g - K_b V_1^2/2g",
+        "npsh_available",
+        "head",
+        "npsh",
+    ),
+    ("Suction specific speed asked", "S_req", "N sqrt(Q)/NPSHA^0.75", "suction_specific_speed_asked", "plain", "npsh"),
+    ("Suction specific speed of this pump", "S", "learned from the notes", "suction_specific_speed", "plain", "learned"),
+    ("Head required", "NPSHR", "(N sqrt(Q)/S)^(4/3)", "npsh_required", "head", "npsh"),
+    ("Margin", "", "NPSHA - NPSHR", "margin", "head", "npsh"),
+    ("Ratio", "", "NPSHA/NPSHR", "ratio", "plain", "npsh"),
+    ("Static pressure ahead of the impeller", "p_1", "rho g (NPSHA - V_1^2/2g) + p_v", "inlet_static_pressure", "pressure", "npsh"),
+)
+_TICKS = (100.0, 250.0, 500.0, 1000.0, 2000.0)  # steps of the gauge board, rpm
+_MOST_TICKS = 9
+
+
+def sheet(answer: Mapping[str, Any], units: Units) -> dict[str, Any]:
+    """An answer as strings: what the phone paints and the command line prints.
+
+    :param units: display unit of each quantity, from :func:`units_for`
+    """
+    say = _Say(units)
+    errors = [{"field": error["field"], "text": error_text(error)} for error in answer["errors"]]
+    common = {
+        "state": answer["verdict"],
+        "headline": answer["headline"]["text"],
+        "errors": errors,
+        "understood": answer["understood"],
+        "not_checked": NOT_CHECKED,
+        "lets_go": LETS_GO,
+    }
+    if errors:
+        return common
+    values = answer["values"]
+    texts = [{"code": row["code"], "text": row["text"]} for row in answer["reasons"]]
+    teach = next((row["text"] for row in texts if row["code"].startswith("teach")), None)
+    return {
+        **common,
+        "lead": texts[0]["text"],
+        "lines": _lines(values, say),
+        "ground": GROUND[answer["ground"]],
+        "reasons": [row for row in texts[1:] if not row["code"].startswith("teach")],
+        "teach": teach,
+        "cautions": answer["cautions"],
+        "gauge": _gauge(values, say),
+        "ledger": [_ledger_row(row, say) for row in answer["ledger"]],
+        "movers": [{"field": row["field"], "text": row["text"]} for row in answer["movers"]],
+        "equivalents": [_equivalent(row, say) for row in answer["equivalents"]],
+        "working": [row for row in (_working_row(entry, values, say) for entry in _WORKING) if row],
+        "curve": _curve(answer["curve"], say),
+    }
+
+
+def error_text(error: Mapping[str, Any]) -> str:
+    """One bad reading in one line: what was given, what is allowed, what to do."""
+    given = f"Given: {error['given']}. " if error["given"] else ""
+    allowed = f"Allowed: {error['allowed']}. " if error["allowed"] else ""
+    return f"{given}{allowed}{error['action']}"
+
+
+def _lines(values: Mapping[str, Any], say: _Say) -> list[dict[str, str]]:
+    rows = []
+    for name, key, label in _LINES:
+        rpm, power = values[name + "_rpm"], values[name + "_power"]
+        if rpm is None:
+            continue
+        if name == "flare" and rpm["mark"] == "P":
+            label += ", typical"
+        reach = " · past wide open" if rpm.get("capped") else ""
+        value = say.holds(rpm["value"]) if name == "holding" else say.rpm(rpm["value"])
+        rows.append(
+            {
+                "key": key,
+                "label": label,
+                "value": value,
+                "span": say.span(rpm["low"], rpm["high"], "rotation"),
+                "aside": say.show(power["value"], "power") + reach,
+            }
+        )
+    plan, power = values["planned_rpm"], values["planned_power"]
+    rows.append(
+        {
+            "key": "plan",
+            "label": "Plan",
+            "value": say.rpm(plan["value"]),
+            "span": say.span(plan["low"], plan["high"], "rotation"),
+            "aside": say.show(power["value"], "power"),
+        }
+    )
+    full = values["full_speed"]
+    if full and full["value"] > 0:
+        rows.append(
+            {"key": "wide_open", "label": "Wide open from", "value": say.from_speed(full["value"]), "span": "", "aside": ""}
+        )
+    return rows
+
+
+def _gauge(values: Mapping[str, Any], say: _Say) -> dict[str, Any]:
+    """The answer as heights on a gauge board, in shares of its height."""
+    marks = []
+    names = {"holding_rpm": "holds", "flare_rpm": "flare", "let_go_rpm": "lets_go", "planned_rpm": "plan"}
+    drawn = {key: values[name] for name, key in names.items() if values[name]}
+    top = 1.08 * max(row["value"] for row in drawn.values())
+    step = next((step for step in _TICKS if top / step <= _MOST_TICKS), _TICKS[-1])
+    top = math.ceil(top / step) * step
+    for key, row in drawn.items():
+        low, high = (None if row[side] is None else min(max(row[side] / top, 0.0), 1.0) for side in ("low", "high"))
+        text = say.number(row["value"], "rotation", "down" if key == "holds" else None)
+        marks.append({"key": key, "at": row["value"] / top, "low": low, "high": high, "text": text})
+    ticks = [
+        {"at": k * step / top, "text": say.number(k * step, "rotation"), "major": True} for k in range(round(top / step) + 1)
+    ]
+    spoken = {"holds": "holds", "flare": "revs run up", "lets_go": "lets go", "plan": "plan"}
+    text = ", ".join(f"{spoken[mark['key']]} {mark['text']} {say.units['rotation']}" for mark in marks)
+    return {"unit": say.units["rotation"], "ticks": ticks, "marks": marks, "text": text[:1].upper() + text[1:] + "."}
+
+
+def _ledger_row(row: Mapping[str, Any], say: _Say) -> dict[str, str]:
+    total = row["term"] in ("margin", "available")
+    sign = "=" if total else "-" if row["value"] < 0 else "+"
+    value = row["value"] if total else abs(row["value"])
+    term = "less the shaft over the water" if row["term"] == "depth" and row["value"] < 0 else _LEDGER[row["term"]]
+    return {"key": row["term"], "term": term, "value": say.show(value, "head"), "sign": sign}
+
+
+def _equivalent(row: Mapping[str, Any], say: _Say) -> dict[str, Any]:
+    did = {"held": "Held", "flared": "Revs ran up at", "let_go": "Let go at"}[row["outcome"]]
+    here = f"{say.rpm(row['rpm_here'])} here, {say.span(row['low'], row['high'], 'rotation')}"
+    return {"note": row["note"], "text": f"{did} {say.number(row['rpm_there'], 'rotation')}: {here}."}
+
+
+def _working_row(entry: tuple[str, ...], values: Mapping[str, Any], say: _Say) -> dict[str, str] | None:
+    title, symbol, formula, name, quantity, source = entry
+    value = values[name]
+    if value is None:
+        return None
+
+    def show(number: float) -> str:
+        return f"{number:.3g}" if quantity == "plain" else say.show(number, quantity)
+
+    low, middle, high = (value[part] for part in ("low", "value", "high"))
+    span = f"{show(low)} to {show(high)}" if low is not None and high is not None else ""
+    if middle is None:
+        middle_text = f"at least {show(low)}" if low is not None else f"at most {show(high)}"
+    else:
+        middle_text = show(middle)
+    return {
+        "title": title,
+        "symbol": symbol,
+        "formula": formula,
+        "numbers": span,
+        "result": middle_text,
+        "source": SOURCES[source].text,
+        "mark": value["mark"],
+    }
+
+
+def _curve(curve: Mapping[str, Any], say: _Say) -> dict[str, Any]:
+    drawn = [(name, label) for name, _, label in _LINES if curve[name + "_rpm"]]
+    rows = []
+    for i in range(0, len(curve["boat_speed"]), 5):
+        row = [say.show(curve["boat_speed"][i], "speed")]
+        for name, _ in drawn:
+            line = curve[name + "_rpm"]
+            value = say.holds(line["value"][i]) if name == "holding" else say.rpm(line["value"][i])
+            row.append(f"{value} ({say.span(line['low'][i], line['high'][i], 'rotation')})")
+        rows.append(row)
+    return {"head": ["Boat speed", *(label for _, label in drawn)], "rows": rows}
