@@ -1,0 +1,67 @@
+"""Builds dist/: plain static files for any host. Run under the venv's Python; serve.py and test.py see to that."""
+
+import hashlib
+import json
+import shutil
+import subprocess
+import sys
+import time
+from pathlib import Path
+
+sys.path.insert(0, str(Path(__file__).parent))
+import bake
+import bundle
+import icons
+import machine
+import pack
+import page
+from machine import CACHE, PWA, ROOT
+
+DIST = ROOT / "dist"
+
+
+def build(out: Path = DIST) -> Path:
+    """Build the app into a folder, anew; returns the folder."""
+    started = time.monotonic()
+    CACHE.mkdir(exist_ok=True)
+    work = CACHE / "work"
+    for folder in (work, out):
+        shutil.rmtree(folder, ignore_errors=True)
+        folder.mkdir(parents=True)
+    demo = json.loads((ROOT / "static" / "demo.json").read_text())
+    runtime = bake.copy_runtime(PWA / "node_modules" / "pyodide", out)
+    core = named_by_content(bake.bake(work, demo["case"]), out / "app")
+    icons.draw(ROOT / "static" / "icon.svg", out / "icons")
+    style = named_by_content(bundle.style(PWA / "css" / "main.css", work), out / "app")
+    worker = named_by_content(bundle.script(PWA / "worker" / "worker.js", work), out / "app")
+    main = named_by_content(bundle.script(PWA / "app" / "main.js", work), out / "app")
+    links = {
+        "style": style,
+        "main": main,
+        "worker": worker,
+        "core": core,
+        "runtime": runtime,
+    }
+    policy = page.render(out, {key: str(path.relative_to(out).as_posix()) for key, path in links.items()}, demo)
+    shutil.copytree(ROOT / "static" / "licences", out / "licences")
+    bundle.service_worker(PWA / "sw" / "sw.js", out, pack.precache(out))
+    (out / "policy.txt").write_text(policy + "\n")
+    pack.compress(out)
+    machine.say(f"built {out.name}/ in {time.monotonic() - started:.1f} s")
+    return out
+
+
+def named_by_content(file: Path, folder: Path) -> Path:
+    """Move a file into a folder under a name that carries its content's hash."""
+    folder.mkdir(exist_ok=True)
+    digest = hashlib.sha256(file.read_bytes()).hexdigest()[:10]
+    return Path(shutil.move(file, folder / f"{file.stem}-{digest}{file.suffix}"))
+
+
+if __name__ == "__main__":
+    machine.prepare("build")
+    machine.in_venv(__file__)
+    try:
+        build()
+    except subprocess.CalledProcessError as error:
+        sys.exit(f"build failed: {' '.join(map(str, error.cmd))}")

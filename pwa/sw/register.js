@@ -1,0 +1,87 @@
+// The page's side of the service worker.
+//
+//   const offline = register({ onState, onWaiting });
+//   onState({ ready, build } | { fault })   every file is kept and whole, or why not
+//   onWaiting(take)                         a newer version is there; take() uses it now and reloads once
+
+/**
+ * @typedef {{ready?: boolean, build?: string, bad?: string[], fault?: string}} State
+ * @typedef {{onState: (state: State) => void, onWaiting: (take: () => void) => void}} Hooks
+ */
+
+/** @param {Hooks} hooks */
+export function register(hooks) {
+  const container = navigator.serviceWorker;
+  if (!container) {
+    hooks.onState({ fault: "none" });
+    return { ran() {}, async repair() {} };
+  }
+  const known = container.controller !== null; // else this is the first install, and nothing is reloaded
+  let taking = false;
+  container.addEventListener("controllerchange", () => {
+    if (known && taking) location.reload();
+    else report();
+  });
+
+  async function begin() {
+    try {
+      const registration = await container.register("sw.js", { updateViaCache: "none" });
+      registration.addEventListener("updatefound", () => follow(registration.installing));
+      follow(registration.installing);
+      offer(registration.waiting);
+      const look = () => document.visibilityState === "visible" && registration.update().catch(() => {}); // no network: later
+      document.addEventListener("visibilitychange", look);
+      addEventListener("pageshow", look);
+    } catch (error) {
+      if (!container.controller) hooks.onState({ fault: String(error) });
+    }
+    report();
+  }
+
+  /** @param {ServiceWorker | null} worker */
+  function follow(worker) {
+    worker?.addEventListener("statechange", () => {
+      if (worker.state === "installed" && container.controller) offer(worker);
+      if (worker.state === "redundant" && !container.controller) hooks.onState({ fault: "install" });
+    });
+  }
+
+  /** @param {ServiceWorker | null} worker */
+  function offer(worker) {
+    if (!worker || !container.controller) return;
+    hooks.onWaiting(() => {
+      taking = true;
+      worker.postMessage({ kind: "take" });
+    });
+  }
+
+  /** @param {string} kind @returns {Promise<State | null>} */
+  function ask(kind) {
+    const controller = container.controller;
+    if (!controller) return Promise.resolve(null);
+    return new Promise((resolve) => {
+      const channel = new MessageChannel();
+      channel.port1.onmessage = ({ data }) => resolve(data);
+      controller.postMessage({ kind }, [channel.port2]);
+    });
+  }
+
+  async function report() {
+    const state = await ask("state");
+    if (state) hooks.onState(state);
+  }
+
+  if (document.readyState === "complete") begin();
+  else addEventListener("load", begin, { once: true });
+  return {
+    /** This build has painted an answer. */
+    ran() {
+      ask("ran");
+    },
+    /** Fetch again what is missing. */
+    async repair() {
+      const state = await ask("repair");
+      if (state) hooks.onState(state);
+    },
+  };
+}
