@@ -1,13 +1,14 @@
 """Units: one table, what people type into SI, and SI into what they read.
 
-Factors: SI brochure and NIST SP 811 [V]. Feet and inches are international; gallons are US.
+Factors follow from the units' definitions, ``sources.SOURCES["si"]`` [D]. Feet and inches are international,
+gallons US.
 """
 
 import math
 import re
 from typing import NamedTuple
 
-from headwater.errors import BadReading
+from headwater.errors import BadReading, quote
 
 
 class Unit(NamedTuple):
@@ -17,7 +18,7 @@ class Unit(NamedTuple):
     factor: float
     offset: float
     step: float  # what it is rounded to when shown
-    names: tuple[str, ...]  # further spellings, lower case
+    names: tuple[str, ...]  # further spellings, lower case, without spaces and points
 
 
 class Reading(NamedTuple):
@@ -48,7 +49,11 @@ QUANTITIES: dict[str, dict[str, Unit]] = {
         ("F", 5 / 9, 459.67, 0.1, "°f degf fahrenheit"),
         ("K", 1.0, 0.0, 0.1, "kelvin"),
     ),
-    "temperature_step": _table(("C", 1.0, 0.0, 0.1, ""), ("F", 5 / 9, 0.0, 1.0, ""), ("K", 1.0, 0.0, 0.1, "")),
+    "temperature_step": _table(
+        ("C", 1.0, 0.0, 0.1, ""),
+        ("F", 5 / 9, 0.0, 1.0, ""),
+        ("K", 1.0, 0.0, 0.1, ""),
+    ),
     "altitude": _table(
         ("m", 1.0, 0.0, 1.0, "metre metres meter meters masl"),
         ("ft", _FT, 0.0, 1.0, "foot feet ' ′ amsl"),
@@ -57,11 +62,11 @@ QUANTITIES: dict[str, dict[str, Unit]] = {
     "length": _table(*_LENGTHS),
     "head": _table(("m", 1.0, 0.0, 0.01, ""), ("ft", _FT, 0.0, 0.1, "")),
     "pressure": _table(
-        ("hPa", 100.0, 0.0, 0.1, "hectopascal mbar mb millibar"),
-        ("inHg", _INHG, 0.0, 0.01, "in.hg inhg \"hg"),
+        ("hPa", 100.0, 0.0, 0.1, "hectopascal mbar mb millibar millibars"),
+        ("inHg", _INHG, 0.0, 0.01, "in inch inches \" \"hg ″hg ″"),
         ("kPa", 1000.0, 0.0, 0.01, ""),
         ("psi", 6894.757293168, 0.0, 0.01, "psia lbf/in2"),
-        ("mmHg", 133.322387415, 0.0, 0.1, "torr"),
+        ("mmHg", 133.322387415, 0.0, 0.1, "mm torr"),
         ("bar", 100000.0, 0.0, 0.0001, ""),
         ("Pa", 1.0, 0.0, 1.0, "pascal"),
     ),
@@ -72,50 +77,69 @@ QUANTITIES: dict[str, dict[str, Unit]] = {
     ),
     "speed": _table(
         ("mph", 0.44704, 0.0, 0.1, "mi/h"),
-        ("km/h", 1 / 3.6, 0.0, 0.1, "kmh kph kmph"),
+        ("km/h", 1 / 3.6, 0.0, 0.1, "kmh kph kmph km/hr"),
         ("kn", 1852 / 3600, 0.0, 0.1, "kt kts knot knots"),
         ("m/s", 1.0, 0.0, 0.1, "mps"),
     ),
-    "rotation": _table(("rpm", 1.0, 0.0, 1.0, "1/min rev/min r/min revs")),
+    "rotation": _table(("rpm", 1.0, 0.0, 1.0, "rpms 1/min rev/min r/min u/min revs")),
     "mass": _table(("kg", 1.0, 0.0, 1.0, "kilo kilos"), ("lb", _LB, 0.0, 1.0, "lbs pound pounds")),
     "volume": _table(
         ("l", 0.001, 0.0, 1.0, "litre litres liter liters"),
         ("gal", 231 * _IN**3, 0.0, 0.1, "gallon gallons usgal"),
         ("m3", 1.0, 0.0, 0.001, "m³"),
     ),
-    "force": _table(("N", 1.0, 0.0, 10.0, ""), ("lbf", _LB * 9.80665, 0.0, 1.0, ""), ("kN", 1000.0, 0.0, 0.01, "")),
+    "force": _table(
+        ("N", 1.0, 0.0, 10.0, ""),
+        ("lbf", _LB * 9.80665, 0.0, 1.0, ""),
+        ("kN", 1000.0, 0.0, 0.01, ""),
+    ),
     "angle": _table(("deg", math.pi / 180, 0.0, 0.1, "° degree degrees")),
     "share": _table(("%", 0.01, 0.0, 1.0, "percent pct")),
     "time": _table(("s", 1.0, 0.0, 0.1, "sec second seconds"), ("min", 60.0, 0.0, 0.1, "minute minutes")),
     "flow": _table(
-        ("l/s", 0.001, 0.0, 1.0, ""), ("gpm", 231 * _IN**3 / 60, 0.0, 10.0, "gal/min"), ("m3/s", 1.0, 0.0, 0.001, "m³/s")
+        ("l/s", 0.001, 0.0, 1.0, ""),
+        ("gpm", 231 * _IN**3 / 60, 0.0, 10.0, "gal/min"),
+        ("m3/s", 1.0, 0.0, 0.001, "m³/s"),
     ),
     "density": _table(("kg/m3", 1.0, 0.0, 0.1, "kg/m³")),
 }
 _SETS = {
-    "us": "F ft in ft inHg hp mph rpm lb gal lbf deg % s gpm kg/m3",
-    "metric": "C m mm m hPa kW km/h rpm kg l N deg % s l/s kg/m3",
+    "us": "F F ft in ft inHg hp mph rpm lb gal lbf deg % s gpm kg/m3",
+    "metric": "C C m mm m hPa kW km/h rpm kg l N deg % s l/s kg/m3",
 }
-_SET_ORDER = (
-    "temperature altitude length head pressure power speed rotation mass volume force angle share time flow density"
-).split()
-SYSTEMS = {name: dict(zip(_SET_ORDER, symbols.split(), strict=True)) for name, symbols in _SETS.items()}
-for _system in SYSTEMS.values():
-    _system["temperature_step"] = _system["temperature"]
+SYSTEMS = {name: dict(zip(QUANTITIES, symbols.split(), strict=True)) for name, symbols in _SETS.items()}
 
 _NAMES = {
     quantity: {name: unit for unit in table.values() for name in (unit.symbol.lower(), *unit.names)}
     for quantity, table in QUANTITIES.items()
 }
-_SPACES = re.compile(r"[\s\u00a0\u2007\u2009\u202f_]+")
-_TYPED = re.compile(r"([+-]?)((?:\d|[.,'’ ](?=\d))+[.,]?)(?:e([+-]?\d{1,2}))?\s*(\D?.*)", re.IGNORECASE | re.DOTALL)
 _LONGEST = 64  # characters of a typed quantity
+_TIDY = str.maketrans(
+    dict.fromkeys("\u2212\u2010\u2011\u2012\u2013\ufe63\uff0d", "-")  # all that is pasted as a minus
+    | dict.fromkeys("\u200b\u2060\ufeff\u200e\u200f", "")  # pasted marks without width
+    | dict.fromkeys("\u201c\u201d", '"')
+    | {"\u2019": "'", "_": " ", "\u00ba": "\u00b0", "\u2044": "/"}
+)
+_TYPED = re.compile(
+    r"([+-]?) ?"
+    r"(?:(?:(\d+)[ -])?(\d+)/(\d+)"  # a tape's fractions: 5 1/8
+    r"|(\d{1,3}(?:[ ']\d{3})+(?!\d)(?:[.,]\d+)?|\d[\d.,]*|[.,]\d+)(?:e([+-]?\d{1,2})(?!\d))?)"
+    r"(.*)",
+    re.IGNORECASE,
+)
+_UNGROUPED = re.compile(r"\d*[.,]?\d+|\d+[.,]")
+_EITHER = re.compile(r"[1-9]\d{0,2}[.,]\d{3}")
+_COMMA_GROUPS = re.compile(r"\d{1,3}(?:,\d{3})+(?:\.\d+)?")
+_POINT_GROUPS = re.compile(r"\d{1,3}(?:\.\d{3})+(?:,\d+)?")
+_PLAIN_SHARE = Unit("%", 1.0, 0.0, 1.0, ())  # 0.8 typed for 80 %
 
 
 def parse(text: object, quantity: str, low: float = -math.inf, high: float = math.inf) -> Reading:
     """What a typed quantity means, SI.
 
-    A comma or point before exactly three last digits is a thousand, unless only the decimal reading is in range.
+    A comma before exactly three last digits is a thousand, unless only the decimal reading is in range. A point
+    there is a decimal point, unless only the thousand is in range; where both are, it is asked for again, since
+    "1.609 m" of altitude taken the wrong way makes a wrong go.
 
     :param text: number and unit as typed; a plain number only for rotation and share
     :param quantity: key of ``QUANTITIES``
@@ -123,66 +147,72 @@ def parse(text: object, quantity: str, low: float = -math.inf, high: float = mat
     :param high: largest SI value allowed
     Raises BadReading, without a field.
     """
-    table = QUANTITIES[quantity]
-    if isinstance(text, bool) or not isinstance(text, (str, int, float)):
-        raise BadReading("", _quote(text), allowed(quantity, low, high), "Write a number and its unit.")
-    typed = _clean(text)
-    match = _TYPED.fullmatch(typed) if len(typed) <= _LONGEST else None
-    if match is None:
-        raise BadReading("", _quote(text), allowed(quantity, low, high), "Write a number and its unit.")
-    sign, digits, power, name = match.groups()
-    unit = _NAMES[quantity].get(name.strip().rstrip(".").lower())
-    if unit is None and not name.strip():
-        if quantity == "rotation":
-            unit = table["rpm"]
-        elif quantity == "share":
-            unit = Unit("", 1.0, 0.0, 0.01, ())
-        else:
-            raise BadReading("", _quote(text), allowed(quantity, low, high), f"Add the unit: {', '.join(table)}.")
+    units = ", ".join(QUANTITIES[quantity])
+
+    def bad(action: str, unit: Unit | None = None) -> BadReading:
+        return BadReading("", quote(text), allowed(quantity, low, high, unit and unit.symbol), action)
+
+    numbers, name = _split(text)
+    unit = _NAMES[quantity].get(name)
+    if not numbers or (unit is None and name[:1].isdigit()):
+        raise bad("Write one number and its unit.")
+    if not name:
+        unit = {"rotation": QUANTITIES["rotation"]["rpm"], "share": _PLAIN_SHARE}.get(quantity)
+        if unit is None:
+            raise bad(f"Add the unit: {units}.")
     if unit is None:
-        raise BadReading("", _quote(text), allowed(quantity, low, high), f"Use one of these units: {', '.join(table)}.")
-    readings = _numbers(digits.strip())
-    if not readings:
-        raise BadReading("", _quote(text), allowed(quantity, low, high, unit.symbol), "Write the number again.")
-    scale = (-1.0 if sign == "-" else 1.0) * 10.0 ** int(power or 0)
-    meant = [(scale * number + unit.offset) * unit.factor for number in readings]
-    value = next((value for value in meant if low <= value <= high), meant[0])
-    if not low <= value <= high:
-        action = "Check the number and the unit."
-        raise BadReading("", _quote(text), allowed(quantity, low, high, unit.symbol), action)
-    symbol = unit.symbol or "%"
-    return Reading(value, symbol, _exact(value, quantity, symbol))
+        raise bad(f"Use one of these units: {units}.")
+    meant = [(number, (number + unit.offset) * unit.factor) for number in numbers]
+    fitting = [(number, value) for number, value in meant if _within(value, low, high)]
+    if not fitting:
+        raise bad("Check the number and the unit.", unit)
+    if len(fitting) > 1 and abs(numbers[0]) < abs(numbers[1]) and not math.isinf(high - low):
+        either = f"{numbers[1]:.0f} {unit.symbol} or {numbers[0]:.2f} {unit.symbol}"
+        raise bad(f"A thousand or a decimal point? Write {either}.", unit)
+    number, value = fitting[0]
+    value = min(max(value, low), high) + 0.0  # plus zero: no minus zero
+    if unit is _PLAIN_SHARE:
+        number *= 100
+    return Reading(value, unit.symbol, f"{number + 0.0:,.10g} {_degree(quantity, unit.symbol)}{unit.symbol}")
 
 
-def _clean(text: str | int | float) -> str:
-    typed = text if isinstance(text, str) else repr(text)
-    if len(typed) > 4 * _LONGEST:
-        return typed
-    return _SPACES.sub(" ", typed.replace("\u2212", "-").replace("\u2013", "-")).strip()
+def _split(text: object) -> tuple[list[float], str]:
+    """The readings of a typed number, the likelier first, and its unit in lower case."""
+    if isinstance(text, (int, float)) and not isinstance(text, bool):
+        return ([float(text)] if abs(text) < 1e100 else []), ""
+    match = None
+    if isinstance(text, str) and len(text) <= _LONGEST:
+        match = _TYPED.fullmatch(" ".join(text.translate(_TIDY).split()))
+    if match is None:
+        return [], ""
+    sign, whole, over, under, digits, power, name = match.groups()
+    if digits:
+        scale = 10.0 ** int(power or 0)
+        numbers = [number * scale for number in _numbers(digits.replace(" ", "").replace("'", ""))]
+    else:
+        numbers = [int(whole or 0) + int(over) / int(under)] if int(under) else []
+    name = name.replace(" ", "").replace(".", "").lower()
+    return [-number if sign == "-" else number for number in numbers], name
 
 
 def _numbers(digits: str) -> list[float]:
     """The readings of typed digits, the likelier first."""
-    plain = digits.replace(" ", "").replace("'", "").replace("’", "")
-    spaced = re.fullmatch(r"\d{1,3}([ '’]\d{3})+([.,]\d+)?|[^ '’]+", digits)
-    if not spaced:
-        return []
-    if re.fullmatch(r"\d*[.,]?\d+|\d+[.,]", plain):
-        decimal = float(plain.replace(",", "."))
-        if re.fullmatch(r"[1-9]\d{0,2}[,.]\d{3}", plain):
-            thousand = float(re.sub("[,.]", "", plain))
-            return [thousand, decimal] if "," in plain else [decimal, thousand]
-        return [decimal]
-    if re.fullmatch(r"\d{1,3}(,\d{3})+(\.\d+)?", plain):
-        return [float(plain.replace(",", ""))]
-    if re.fullmatch(r"\d{1,3}(\.\d{3})+(,\d+)?", plain):
-        return [float(plain.replace(".", "").replace(",", "."))]
+    if _UNGROUPED.fullmatch(digits):
+        decimal = float(digits.replace(",", "."))
+        if not _EITHER.fullmatch(digits):
+            return [decimal]
+        thousand = float(digits.replace(",", "").replace(".", ""))
+        return [thousand, decimal] if "," in digits else [decimal, thousand]
+    if _COMMA_GROUPS.fullmatch(digits):
+        return [float(digits.replace(",", ""))]
+    if _POINT_GROUPS.fullmatch(digits):
+        return [float(digits.replace(".", "").replace(",", "."))]
     return []
 
 
-def _quote(text: object) -> str:
-    shown = text if isinstance(text, str) else repr(text)
-    return shown if len(shown) <= _LONGEST else shown[:_LONGEST] + "…"
+def _within(value: float, low: float, high: float) -> bool:
+    """Whether a value is in range, its ends included whatever unit they were typed in."""
+    return low <= value <= high or math.isclose(value, low) or math.isclose(value, high)
 
 
 def to_si(number: float, quantity: str, symbol: str) -> float:
@@ -205,31 +235,34 @@ def number(value: float, quantity: str, symbol: str, rounded: str | None = None)
     step = QUANTITIES[quantity][symbol].step
     if quantity == "rotation":
         step = 10.0 if abs(value) >= 100 else 1.0
-    turn = {"down": math.floor, "up": math.ceil}.get(rounded or "", round)
-    slack = {"down": 1e-9, "up": -1e-9}.get(rounded or "", 0.0)
+    steps = from_si(value, quantity, symbol) / step
+    if rounded == "down":
+        whole = math.floor(steps + 1e-9 * max(1.0, abs(steps)))
+    elif rounded == "up":
+        whole = math.ceil(steps - 1e-9 * max(1.0, abs(steps)))
+    else:
+        whole = round(steps)
     places = max(0, -math.floor(math.log10(step) + 1e-9))
-    return f"{turn(from_si(value, quantity, symbol) / step + slack) * step:,.{places}f}".replace("-0.0", "0.0")
+    return f"{whole * step:,.{places}f}"
 
 
 def show(value: float, quantity: str, symbol: str, rounded: str | None = None) -> str:
     """An SI value with its unit as a person reads it."""
-    degree = "°" if quantity.startswith("temperature") and symbol != "K" else ""
-    return f"{number(value, quantity, symbol, rounded)} {degree}{symbol}"
+    return f"{number(value, quantity, symbol, rounded)} {_degree(quantity, symbol)}{symbol}"
 
 
-def _exact(value: float, quantity: str, symbol: str) -> str:
-    """A value as it was understood: no digit that was typed is rounded away."""
-    text = f"{from_si(value, quantity, symbol):,.6f}".rstrip("0").rstrip(".")
-    degree = "°" if quantity.startswith("temperature") and symbol != "K" else ""
-    return f"{'0' if text in ('', '-0') else text} {degree}{symbol}"
+def _degree(quantity: str, symbol: str) -> str:
+    return "°" if quantity.startswith("temperature") and symbol != "K" else ""
 
 
 def allowed(quantity: str, low: float, high: float, symbol: str | None = None) -> str:
-    """The allowed range in words, in a unit."""
+    """The allowed range in words, in a unit, its ends rounded inward; empty where there is no range."""
     shown = symbol if symbol in QUANTITIES[quantity] else next(iter(QUANTITIES[quantity]))
     if math.isinf(low) or math.isinf(high):
         return ""
-    return f"{_exact(low, quantity, shown)} to {_exact(high, quantity, shown)}"
+    ends = (number(low, quantity, shown, "up"), number(high, quantity, shown, "down"))
+    low_text, high_text = (end.rstrip("0").rstrip(".") if "." in end else end for end in ends)
+    return f"{low_text} to {high_text} {_degree(quantity, shown)}{shown}"
 
 
 def other(quantity: str, symbol: str) -> str | None:
