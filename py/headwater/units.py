@@ -39,7 +39,7 @@ def _table(*rows: tuple[str, float, float, float, str]) -> dict[str, Unit]:
 _LENGTHS = (
     ("mm", 0.001, 0.0, 1.0, "millimetre millimetres millimeter millimeters"),
     ("cm", 0.01, 0.0, 0.1, "centimetre centimetres centimeter centimeters"),
-    ("in", _IN, 0.0, 0.01, "inch inches \" ″"),
+    ("in", _IN, 0.0, 0.01, 'inch inches " ″'),
     ("m", 1.0, 0.0, 0.001, "metre metres meter meters"),
     ("ft", _FT, 0.0, 0.01, "foot feet ' ′"),
 )
@@ -63,7 +63,7 @@ QUANTITIES: dict[str, dict[str, Unit]] = {
     "head": _table(("m", 1.0, 0.0, 0.01, ""), ("ft", _FT, 0.0, 0.1, "")),
     "pressure": _table(
         ("hPa", 100.0, 0.0, 0.1, "hectopascal mbar mb millibar millibars"),
-        ("inHg", _INHG, 0.0, 0.01, "in inch inches \" \"hg ″hg ″"),
+        ("inHg", _INHG, 0.0, 0.01, 'in inch inches " "hg ″hg ″'),
         ("kPa", 1000.0, 0.0, 0.01, ""),
         ("psi", 6894.757293168, 0.0, 0.01, "psia lbf/in2"),
         ("mmHg", 133.322387415, 0.0, 0.1, "mm torr"),
@@ -137,9 +137,9 @@ _PLAIN_SHARE = Unit("%", 1.0, 0.0, 1.0, ())  # 0.8 typed for 80 %
 def parse(text: object, quantity: str, low: float = -math.inf, high: float = math.inf) -> Reading:
     """What a typed quantity means, SI.
 
-    A comma before exactly three last digits is a thousand, unless only the decimal reading is in range. A point
-    there is a decimal point, unless only the thousand is in range; where both are, it is asked for again, since
-    "1.609 m" of altitude taken the wrong way makes a wrong go.
+    A comma before exactly three last digits is a thousand, unless only the decimal reading is in range. A
+    point there is a decimal point, unless only the thousand is in range; where both are, it is asked for
+    again, since "1.609 m" of altitude taken the wrong way makes a wrong go.
 
     :param text: number and unit as typed; a plain number only for rotation and share
     :param quantity: key of ``QUANTITIES``
