@@ -1,42 +1,92 @@
 """A case as the fragment of a link, and back: versioned, short, with a check on its end.
 
-``1.`` then base64url of raw deflate over compact JSON, then six letters of a SHA-256 check. Keys are shortened by
-version 1's own table, and what equals version 1's frozen defaults is left out.
+``1.`` then base64url of raw deflate over compact JSON, then six letters of CRC-32. Keys are shortened by version
+1's own table. A reading typed as version 1's default goes as an empty list; one left out stays out, and where a
+later program has another default the old one is written in, so that a link goes on meaning what it meant.
 """
 
 import base64
-import binascii
-import hashlib
 import json
+import re
 import zlib
 from collections.abc import Mapping
 from typing import Any
 
-from headwater.errors import BadReading
+from headwater.errors import BadReading, quote
+from headwater.fields import FIELD
 
-VERSION = "1"
+VERSION = 1
 LONGEST = 8000  # characters of a fragment
 _MOST_BYTES = 64_000  # of a case once unpacked
+_DEEPEST = 4  # case, notes, note, typed default
 _CHECK = 6  # characters
+_FRAGMENT = re.compile(r"(\d{1,4})(?:\.([\w-]*))?", re.ASCII)
+_BRACKETS = re.compile(r'"(?:[^"\\]|\\.)*"|[\[\]{}]')
+
+# Frozen, all four: a link made today must open for ever. A change of any makes a new version.
 _PARTS = {"b": "boat", "p": "place", "n": "plan", "s": "notes"}
-# Frozen: a link made today must open for ever. New keys are added at the end, none is changed.
-_SHORT = {
-    "l": "label", "d": "date", "j": "jets", "jr": "jets_running", "n": "nozzle_diameter", "i": "impeller_diameter",
-    "h": "hub_diameter", "sd": "shaft_depth", "w": "wide_open_rpm", "e": "engine_power", "rf": "rpm_from",
-    "g": "gear_ratio", "wf": "wake_fraction", "rl": "ram_loss", "il": "intake_loss", "nl": "nozzle_loss",
-    "pe": "pump_efficiency", "de": "driveline_efficiency", "ss": "suction_specific_speed", "a": "altitude",
-    "t": "water_temperature", "sp": "station_pressure", "q": "altimeter_setting", "sc": "station_pressure_confirmed",
-    "af": "altitude_from", "p": "power", "r": "rpm", "th": "throttle", "v": "boat_speed", "re": "reserve",
-    "o": "outcome", "su": "set_up",
-}  # fmt: skip
-_LONG = {name: short for short, name in _SHORT.items()}
+_NAMES = {
+    "l": "label",
+    "d": "date",
+    "j": "jets",
+    "jr": "jets_running",
+    "n": "nozzle_diameter",
+    "i": "impeller_diameter",
+    "h": "hub_diameter",
+    "sd": "shaft_depth",
+    "w": "wide_open_rpm",
+    "e": "engine_power",
+    "rf": "rpm_from",
+    "g": "gear_ratio",
+    "wf": "wake_fraction",
+    "rl": "ram_loss",
+    "il": "intake_loss",
+    "nl": "nozzle_loss",
+    "pe": "pump_efficiency",
+    "de": "driveline_efficiency",
+    "ss": "suction_specific_speed",
+    "o": "outcome",
+    "p": "power",
+    "r": "rpm",
+    "th": "throttle",
+    "v": "boat_speed",
+    "re": "reserve",
+    "a": "altitude",
+    "t": "water_temperature",
+    "sp": "station_pressure",
+    "q": "altimeter_setting",
+    "sc": "station_pressure_confirmed",
+    "af": "altitude_from",
+    "su": "set_up",
+}
 _DEFAULTS: dict[str, dict[str, Any]] = {
-    "boat": {"jets": 1, "rpm_from": "seen", "gear_ratio": 1},
+    "boat": {
+        "jets": 1,
+        "rpm_from": "seen",
+        "gear_ratio": 1.0,
+        "wake_fraction": 0.08,
+        "ram_loss": 0.25,
+        "intake_loss": 0.15,
+        "nozzle_loss": 0.03,
+        "pump_efficiency": 0.80,
+        "driveline_efficiency": 0.97,
+    },
     "place": {"altitude_from": "map"},
-    "plan": {},
+    "plan": {"reserve": 1.10},
     "notes": {},
 }
-_START = b'{"b":{"n":" mm","i":" mm","h":" mm","w":"rpm","e":" hp","l":""},"p":{"l":"","a":" ft m","t":" F C"},"s":[{"o":"held","o":"let_go","r":"'
+_USUAL = (  # what most links hold, for deflate to point at; likeliest last
+    b'"jr":2,"rf":"papers","g":1.0,"pe":0.8,"ss":"re":"th":"80 %","p":" kW"},"sp":" inHg"," hPa","q":"29."'
+    b' km/h"," kn"," m/s","o":"flared","r":"," C"},{" m","t":" K"," in","h":" cm","sd":"0.'
+    b'{"b":{"l":"","d":"2027-0","j":1,"n":" mm","i":" mm","h":" mm","sd":" in","w":"4,000 rpm","e":" hp"},'
+    b'"p":{"l":"","a":"1,000 ft","t":"54 F"},"n":{"r":"3,000 rpm","v":"0 mph"},'
+    b'"s":[{"l":"","d":"2026-0","o":"held","r":"3,000 rpm","v":"0 mph","a":"1,000 ft","t":"54 F"},'
+    b'{"l":"","d":"2026-0","o":"let_go","r":"3,000 rpm","v":"0 mph","a":"1,000 ft","t":"54 F"}]}'
+)
+_SHORT = {name: short for short, name in _NAMES.items()}
+_NOT_OURS = "This is not a link of Headwater."
+_CUT = "This link was cut or changed on its way. Ask for it again."
+_UNKNOWN = "This link holds something that is not understood here. Update the app, then open it again."
 
 
 def encode(case: Any) -> str:
@@ -45,92 +95,131 @@ def encode(case: Any) -> str:
     :param case: readings as typed
     Raises BadReading where the case is none, or too long for a link.
     """
-    if not isinstance(case, Mapping) or not set(case) <= set(_PARTS.values()):
+    if not isinstance(case, Mapping):
         raise _bad("Only a case can be made into a link.")
+    for key in case:
+        if key not in _PARTS.values():
+            raise _bad(f"{quote(key)} is no part of a case and cannot go into a link.")
     packed: dict[str, Any] = {}
     for short, part in _PARTS.items():
-        content = case.get(part)
-        if content:
-            many = isinstance(content, list)
-            packed[short] = [_pack(part, one) for one in content] if many else _pack(part, content)
+        if part in case:
+            content = case[part]
+            if part == "notes" and isinstance(content, list):
+                packed[short] = [_pack(part, note) for note in content]
+            else:
+                packed[short] = None if content is None else _pack(part, content)
     try:
         text = json.dumps(packed, allow_nan=False, ensure_ascii=False, separators=(",", ":")).encode()
-    except (ValueError, TypeError, RecursionError):
+    except ValueError:  # not a number, or half a character
         raise _bad("A reading in this case cannot go into a link.") from None
-    deflate = zlib.compressobj(9, zlib.DEFLATED, -15, zdict=_START)
-    body = base64.urlsafe_b64encode(deflate.compress(text) + deflate.flush()).decode().rstrip("=")
-    fragment = f"{VERSION}.{body}{_check(body)}"
-    if len(text) > _MOST_BYTES or len(fragment) > LONGEST:
+    deflate = zlib.compressobj(9, zlib.DEFLATED, -15, zdict=_USUAL)
+    body = _letters(deflate.compress(text) + deflate.flush())
+    if len(text) > _MOST_BYTES or len(body) > LONGEST - 10:
         raise _bad("This case is too long for a link. Send fewer notes.")
-    return fragment
+    return f"{VERSION}.{body}{_check(body)}"
 
 
 def decode(fragment: Any) -> dict[str, Any]:
-    """The case that a link's fragment carries, as it was typed.
+    """The case that a link carries, as it was typed.
 
-    :param fragment: with or without the hash sign
+    :param fragment: the link's fragment, or the whole link
     Raises BadReading, in plain words, for every link that is cut, damaged, foreign or too new.
     """
-    if not isinstance(fragment, str):
-        raise _bad("This is not a link of Headwater.")
-    version, dot, rest = fragment.strip().removeprefix("#").partition(".")
-    if not dot or not (version.isascii() and version.isdigit() and len(version) <= 4):
-        raise _bad("This is not a link of Headwater.")
-    if version != VERSION:
+    text = fragment if isinstance(fragment, str) and len(fragment) <= 2 * LONGEST else ""
+    tidied = "".join(text.rpartition("#")[2].split()).rstrip(".,;:!?)>]'\"")  # as messages wrap and end it
+    match = _FRAGMENT.fullmatch(tidied)
+    version = int(match[1]) if match else 0
+    if match is None or version < 1:
+        raise _bad(_NOT_OURS)
+    if version > VERSION:
         raise _bad("This link comes from a newer version. Update the app, then open it again.")
-    body, check = rest[:-_CHECK], rest[-_CHECK:]
-    if len(rest) > LONGEST or not body or not rest.isascii() or _check(body) != check:
-        raise _bad("This link was cut or damaged on its way. Ask for it again.")
-    try:
-        raw = base64.b64decode(body + "=" * (-len(body) % 4), altchars=b"-_", validate=True)
-        inflate = zlib.decompressobj(-15, zdict=_START)
-        text = inflate.decompress(raw, _MOST_BYTES)
-        if inflate.unconsumed_tail or not inflate.eof:
-            raise _bad("This link holds too much. Ask for a shorter one.")
-        packed = json.loads(text.decode(), parse_constant=_no_constant)
-    except (binascii.Error, zlib.error, ValueError, RecursionError) as error:
-        if isinstance(error, BadReading):
-            raise
-        raise _bad("This link is damaged. Ask for it again.") from None
-    if not isinstance(packed, dict) or not set(packed) <= set(_PARTS):
-        raise _bad("This link holds something else than a check.")
+    body, check = (match[2] or "")[:-_CHECK], (match[2] or "")[-_CHECK:]
+    if not body or _check(body) != check:
+        raise _bad(_CUT)
+    packed = _unpacked(body)
+    if not isinstance(packed, dict):
+        raise _bad(_UNKNOWN)
     case: dict[str, Any] = {}
     for short, content in packed.items():
-        part = _PARTS[short]
-        case[part] = [_unpack(part, one) for one in content] if part == "notes" and isinstance(content, list) else _unpack(part, content)
+        part = _PARTS.get(short)
+        if part is None:
+            raise _bad(_UNKNOWN)
+        if part == "notes" and isinstance(content, list):
+            case[part] = [_unpack(part, note) for note in content]
+        else:
+            case[part] = None if content is None else _unpack(part, content)
+    for part, usual in _DEFAULTS.items():
+        for name, value in usual.items():
+            if FIELD[f"{part}.{name}"].default != value:
+                case[part] = {name: value} | (case.get(part) or {})
     return case
 
 
-def _pack(part: str, content: Any) -> Any:
+def _pack(part: str, content: Any) -> dict[str, Any]:
     if not isinstance(content, Mapping):
-        raise _bad("Only a case can be made into a link.")
+        raise _bad(f"{part} cannot go into a link: it must hold readings.")
+    for name, value in content.items():
+        if name not in _SHORT or f"{part}.{name}" not in FIELD or not _plain(value):
+            raise _bad(f"{part}.{quote(name)} cannot go into a link.")
     usual = _DEFAULTS[part]
     return {
-        _LONG.get(name, f"_{name}"): value
-        for name, value in content.items()
-        if not (name in usual and usual[name] == value and type(usual[name]) is type(value))
+        short: [] if _same(usual.get(name), content[name]) else content[name]
+        for name, short in _SHORT.items()
+        if name in content
     }
 
 
 def _unpack(part: str, content: Any) -> dict[str, Any]:
     if not isinstance(content, dict):
-        raise _bad("This link holds something else than a check.")
+        raise _bad(_UNKNOWN)
     out = {}
     for short, value in content.items():
-        name = short[1:] if short.startswith("_") else _SHORT.get(short)
-        if name is None or isinstance(value, (dict, list)):
-            raise _bad("This link holds something else than a check.")
-        out[name] = value
+        name = _NAMES.get(short, "")
+        if f"{part}.{name}" not in FIELD:
+            raise _bad(_UNKNOWN)
+        out[name] = _DEFAULTS[part].get(name) if value == [] else value
+        if not _plain(out[name]):
+            raise _bad(_UNKNOWN)
     return out
 
 
+def _unpacked(body: str) -> Any:
+    """What the letters of a link hold: size and depth are known to be small before anything is built."""
+    inflate = zlib.decompressobj(-15, zdict=_USUAL)
+    try:
+        raw = base64.b64decode(body + "=" * (-len(body) % 4), altchars=b"-_", validate=True)
+        text = inflate.decompress(raw, _MOST_BYTES).decode()
+        if not inflate.eof or inflate.unused_data:
+            raise _bad(_CUT if not inflate.unconsumed_tail else "This link holds too much to be a case.")
+        depth = 0
+        for mark in _BRACKETS.findall(text):
+            depth += (mark in "[{") - (mark in "]}")
+            if depth > _DEEPEST:
+                raise _bad(_UNKNOWN)
+        return json.loads(text)
+    except BadReading:
+        raise
+    except (ValueError, zlib.error):
+        raise _bad(_CUT) from None
+
+
+def _plain(value: Any) -> bool:
+    """Whether a reading is of a kind that a case can hold."""
+    if isinstance(value, (int, float)):
+        return abs(value) < 1e15  # nor is it infinite or no number
+    return value is None or isinstance(value, str)
+
+
+def _same(usual: Any, value: Any) -> bool:
+    return usual is not None and type(usual) is type(value) and usual == value
+
+
 def _check(body: str) -> str:
-    digest = hashlib.sha256(f"{VERSION}.{body}".encode()).digest()
-    return base64.urlsafe_b64encode(digest)[:_CHECK].decode()
+    return _letters(zlib.crc32(f"{VERSION}.{body}".encode()).to_bytes(4, "big"))
 
 
-def _no_constant(name: str) -> None:
-    raise ValueError(name)
+def _letters(raw: bytes) -> str:
+    return base64.urlsafe_b64encode(raw).decode().rstrip("=")
 
 
 def _bad(action: str) -> BadReading:
