@@ -3,8 +3,9 @@
 //   const core = connect({ worker, runtime, core }, { onProgress, onReady, onFatal });
 //   const reply = await core.ask({ ask: "check", case: … });   // null: a newer question of this kind came in
 //
-// One question runs at a time. Of each kind one may wait, and a newer one takes its place; an answer that a newer
-// question has overtaken is dropped. A start or a question that never settles is given up and the worker replaced.
+// One question runs at a time. Of each kind (and field) one may wait, and a newer one takes its place; an answer that
+// a newer question has overtaken is dropped. A start or a question that never settles is given up and the worker
+// replaced; after a few starts in vain every question fails, until again() is called.
 
 /** @import { ToPage } from "./protocol.js" */
 
@@ -16,8 +17,12 @@
  */
 
 const START_MS = 60_000; // the slowest phone that still starts
+const FIRST_START_MS = 300_000; // nothing kept yet: Python comes over a weak signal
 const ANSWER_MS = 20_000;
 const MOST_STARTS = 3; // in a row without an answer between
+
+/** What a newer question supersedes. @param {Request} request */
+const kindOf = ({ ask, field }) => `${ask} ${field ?? ""}`;
 
 /** @param {Places} places @param {Hooks} hooks */
 export function connect(places, hooks) {
@@ -28,6 +33,7 @@ export function connect(places, hooks) {
   /** @type {Map<string, Question>} */
   const waiting = new Map();
   let ready = false;
+  let stopped = false;
   let starts = 0;
   let id = 0;
   /** @type {ReturnType<typeof setTimeout> | undefined} */
@@ -41,34 +47,43 @@ export function connect(places, hooks) {
 
   function start() {
     starts += 1;
-    ready = false;
+    stopped = false;
     const url = new URL(places.worker, document.baseURI);
     worker = new Worker(url, { type: "module" });
     worker.onmessage = ({ data }) => hear(data);
     worker.onerror = (event) => fatal(event.message || "the worker did not load");
     const [runtime, core] = [places.runtime, places.core].map((path) => new URL(path, document.baseURI).href);
     worker.postMessage({ kind: "start", runtime: `${runtime}/`, core });
-    watch(START_MS, "the start took too long");
+    watchStart();
+  }
+
+  function watchStart() {
+    watch(navigator.serviceWorker?.controller ? START_MS : FIRST_START_MS, "the start took too long");
   }
 
   /** @param {string} message */
   function fatal(message) {
     clearTimeout(watchdog);
+    worker.onmessage = worker.onerror = null;
     worker.terminate();
     ready = false;
-    if (running) waiting.has(running.request.ask) ? running.settle(null) : waiting.set(running.request.ask, running);
-    running = null;
-    const again = starts < MOST_STARTS;
-    hooks.onFatal(message, again);
-    if (again) start();
-    else for (const question of [...waiting.values()]) question.fail(new Error(message));
-    if (!again) waiting.clear();
+    if (running) {
+      const kind = kindOf(running.request);
+      if (waiting.has(kind)) running.settle(null);
+      else waiting.set(kind, running); // asked again of the next worker
+      running = null;
+    }
+    stopped = starts >= MOST_STARTS;
+    hooks.onFatal(message, !stopped);
+    if (!stopped) return start();
+    for (const question of waiting.values()) question.fail(new Error(message));
+    waiting.clear();
   }
 
   /** @param {ToPage} data */
   function hear(data) {
     if (data.kind === "progress") {
-      watch(START_MS, "the start took too long");
+      watchStart();
       hooks.onProgress(data.step);
     } else if (data.kind === "ready") {
       clearTimeout(watchdog);
@@ -84,7 +99,7 @@ export function connect(places, hooks) {
       if (data.kind === "error") fail(new Error(data.message));
       else {
         starts = 0;
-        settle(waiting.has(request.ask) ? null : JSON.parse(data.text));
+        settle(waiting.has(kindOf(request)) ? null : JSON.parse(data.text));
       }
       next();
     }
@@ -106,9 +121,11 @@ export function connect(places, hooks) {
   return {
     /** @param {Request} request @returns {Promise<any>} */
     ask(request) {
-      waiting.get(request.ask)?.settle(null);
+      if (stopped) return Promise.reject(new Error("Python is not running"));
+      const kind = kindOf(request);
+      waiting.get(kind)?.settle(null);
       return new Promise((settle, fail) => {
-        waiting.set(request.ask, { request, settle, fail });
+        waiting.set(kind, { request, settle, fail });
         next();
       });
     },

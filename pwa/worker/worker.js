@@ -2,11 +2,9 @@
 
 /** @import { ToWorker, ToPage } from "./protocol.js" */
 
-/** What Pyodide wants to know of packages: there are none beside the baked zip. */
-const NO_PACKAGES = {
-  info: { abi_version: "2026_0", arch: "wasm32", platform: "emscripten_5_0_3", python: "3.14.2", version: "314.0.7" },
-  packages: {},
-};
+import { info } from "pyodide/pyodide-lock.json";
+
+const SMALLEST = Uint8Array.of(0, 0x61, 0x73, 0x6d, 1, 0, 0, 0); // a module with nothing in it
 
 /** @type {((text: string) => string) | undefined} */
 let door;
@@ -16,13 +14,14 @@ const tell = (message) => self.postMessage(message);
 
 /** @param {string} runtime @param {string} core */
 async function start(runtime, core) {
+  new WebAssembly.Module(SMALLEST); // where WebAssembly is refused this throws, while Pyodide would wait for ever
   tell({ kind: "progress", step: "runtime" });
   const { loadPyodide } = await import(`${runtime}pyodide.mjs`);
   const pyodide = await loadPyodide({
     indexURL: runtime,
     packageBaseUrl: runtime,
     stdLibURL: core,
-    lockFileContents: NO_PACKAGES,
+    lockFileContents: { info, packages: {} }, // there are none beside the baked zip
     env: { PYTHONHASHSEED: "0" },
   });
   tell({ kind: "progress", step: "core" });
