@@ -1,9 +1,11 @@
 """What to say: codes and figures become sentences, here and nowhere else."""
 
 import math
+import re
 from collections.abc import Iterable, Mapping
 from typing import Any
 
+from headwater import fields
 from headwater import units as unit_table
 from headwater.sources import SOURCES
 
@@ -316,12 +318,16 @@ def sheet(answer: Mapping[str, Any], units: Units) -> dict[str, Any]:
     :param units: display unit of each quantity, from :func:`units_for`
     """
     say = _Say(units)
-    errors = [{"field": error["field"], "text": error_text(error)} for error in answer["errors"]]
+    errors = [
+        {"field": error["field"], "label": _label(error["field"]), "text": error_text(error)}
+        for error in answer["errors"]
+    ]
     common = {
         "state": answer["verdict"],
         "headline": answer["headline"]["text"],
         "errors": errors,
         "understood": answer["understood"],
+        "others": {key: other for key, text in answer["understood"].items() if (other := _other(key, text))},
         "not_checked": NOT_CHECKED,
         "lets_go": LETS_GO,
     }
@@ -345,6 +351,24 @@ def sheet(answer: Mapping[str, Any], units: Units) -> dict[str, Any]:
         "working": [row for row in (_working_row(entry, values, say) for entry in _WORKING) if row],
         "curve": _curve(answer["curve"], say),
     }
+
+
+def _field_key(path: str) -> str:
+    return re.sub(r"^notes\[\d+\]", "notes", path)
+
+
+def _label(path: str) -> str:
+    """A reading's name on screen; a note's carries which note."""
+    field = fields.FIELD.get(_field_key(path))
+    label = field.label if field else path
+    note = re.match(r"notes\[(\d+)\]", path)
+    return f"{SCREEN['note']} {int(note[1]) + 1}, {label}" if note else label
+
+
+def _other(path: str, text: str) -> str:
+    """A reading in the other common unit, for beneath it."""
+    field = fields.FIELD[_field_key(path)]
+    return fields.other_unit(field.key, text) if field.kind in unit_table.QUANTITIES else ""
 
 
 def error_text(error: Mapping[str, Any]) -> str:
@@ -462,3 +486,81 @@ def _curve(curve: Mapping[str, Any], say: _Say) -> dict[str, Any]:
             row.append(f"{value} ({say.span(line['low'][i], line['high'][i], 'rotation')})")
         rows.append(row)
     return {"head": ["Boat speed", *(label for _, label in drawn)], "rows": rows}
+
+
+# Every fixed sentence of the app, compiled into the page at build
+
+SCREEN = {
+    "title": "Headwater",
+    "tagline": "Does the pump hold water here?",
+    "putin": "Put-in",
+    "boat": "Boat",
+    "notes": "What has she done?",
+    "notes_hint": "One line for each time you know the rpm: she held, the revs ran up, or she let go.",
+    "note": "Note",
+    "first": "First",
+    "first_hint": "Four readings and the check can answer.",
+    "fine": "Finer points",
+    "fine_hint": "Filled in already, marked typical. Change what you have measured.",
+    "place_more": "Barometer, name, reserve",
+    "how_hard": "How hard",
+    "how_hard_hint": "Empty: wide open.",
+    "wide_open": "wide open",
+    "unit_of": "Unit of",
+    "units": "Units",
+    "us": "ft, °F, hp, mph",
+    "metric": "m, °C, kW, km/h",
+    "add_note": "Add a note",
+    "remove_note": "Remove this note",
+    "typical": "Typical",
+    "how": "How to get it",
+    "demo_open": "Show a demo boat",
+    "demo_on": "Demo boat, river and notes, all invented.",
+    "demo_close": "Back to my boat",
+    "share": "Make a link",
+    "shared": "Link copied.",
+    "shared_text": "Pump check for",
+    "share_failed": "The link could not be copied. It stands in the address line now.",
+    "sent": "Sent, not yet checked",
+    "sent_checked": "Sent to you. Checked on this phone now, read-only.",
+    "make_mine": "Make it mine",
+    "make_mine_warns": "Your own boat and notes will be replaced. Go on?",
+    "sent_close": "Close",
+    "reasons": "Why",
+    "equivalents": "Your notes here",
+    "ledger": "Head at the pump",
+    "movers": "What would change this",
+    "curve": "At each boat speed",
+    "working": "The working",
+    "working_source": "Source",
+    "working_mark": "mark",
+    "cautions": "Cautions",
+    "between": "between",
+    "gauge": "Gauge of rpm",
+    "starting": "Starting. You can type already.",
+    "working_on": "Working it out.",
+    "welcome": "Set up your boat, then read the put-in.",
+    "welcome_go": "Set up my boat",
+    "last": "Last answer",
+    "last_stale": "Not fresh.",
+    "offline_not": "Not yet ready offline",
+    "offline_ready": "Ready offline",
+    "offline_broken": "Not ready offline: files are missing.",
+    "offline_install": "Not ready offline: the download did not arrive whole. It is tried again next time.",
+    "offline_none": "This browser cannot keep the app offline.",
+    "repair": "Fetch them again",
+    "update": "A newer version is here.",
+    "update_take": "Use it now",
+    "update_later": "Later",
+    "fatal": "The check stopped and is starting again. What you typed is kept.",
+    "fatal_end": "The check does not start on this phone. What you typed is kept.",
+    "fatal_again": "Try again",
+    "not_saved": "This browser does not let the app keep what you type.",
+    "night": "Night",
+    "day": "Day",
+    "guard": "Headwater did not start. Reload the page, or use a newer browser.",
+    "noscript": "Headwater needs JavaScript to work the check out.",
+    "skip": "To the answer",
+    "version": "Version",
+    "go_to_reading": "Go to this reading",
+}
