@@ -1,8 +1,9 @@
 """A case as the fragment of a link, and back: versioned, short, with a check on its end.
 
-``1.`` then base64url of raw deflate over compact JSON, then six letters of CRC-32. Keys are shortened by version
-1's own table. A reading typed as version 1's default goes as an empty list; one left out stays out, and where a
-later program has another default the old one is written in, so that a link goes on meaning what it meant.
+``1.`` then base64url of raw deflate over compact JSON, then six letters of CRC-32. Keys are shortened by
+version 1's own table. A reading typed as version 1's default goes as an empty list; one left out stays out,
+and where a later program has another default the old one is written in, so that a link goes on meaning what
+it meant.
 """
 
 import base64
