@@ -139,7 +139,8 @@ def parse(text: object, quantity: str, low: float = -math.inf, high: float = mat
 
     A comma before exactly three last digits is a thousand, unless only the decimal reading is in range. A
     point there is a decimal point, unless only the thousand is in range; where both are, it is asked for
-    again, since "1.609 m" of altitude taken the wrong way makes a wrong go.
+    again. An altitude taken the wrong way makes a wrong go, so "1.609 m" is asked for again and "20,000 ft" is
+    out of range, never 20 ft.
 
     :param text: number and unit as typed; a plain number only for rotation and share
     :param quantity: key of ``QUANTITIES``
@@ -162,6 +163,8 @@ def parse(text: object, quantity: str, low: float = -math.inf, high: float = mat
             raise bad(f"Add the unit: {units}.")
     if unit is None:
         raise bad(f"Use one of these units: {units}.")
+    if quantity == "altitude" and unit.step >= 1 and abs(numbers[0]) > abs(numbers[-1]):
+        numbers = numbers[:1]
     meant = [(number, (number + unit.offset) * unit.factor) for number in numbers]
     fitting = [(number, value) for number, value in meant if _within(value, low, high)]
     if not fitting:
