@@ -10,7 +10,7 @@ import base64
 import json
 import re
 import zlib
-from collections.abc import Mapping
+from collections.abc import Callable, Mapping
 from typing import Any
 
 from headwater.errors import BadReading, quote
@@ -104,11 +104,7 @@ def encode(case: Any) -> str:
     packed: dict[str, Any] = {}
     for short, part in _PARTS.items():
         if part in case:
-            content = case[part]
-            if part == "notes" and isinstance(content, list):
-                packed[short] = [_pack(part, note) for note in content]
-            else:
-                packed[short] = None if content is None else _pack(part, content)
+            packed[short] = _each(part, case[part], _pack)
     try:
         text = json.dumps(packed, allow_nan=False, ensure_ascii=False, separators=(",", ":")).encode()
     except ValueError:  # not a number, or half a character
@@ -145,15 +141,21 @@ def decode(fragment: Any) -> dict[str, Any]:
         part = _PARTS.get(short)
         if part is None:
             raise _bad(_UNKNOWN)
-        if part == "notes" and isinstance(content, list):
-            case[part] = [_unpack(part, note) for note in content]
-        else:
-            case[part] = None if content is None else _unpack(part, content)
+        case[part] = _each(part, content, _unpack)
     for part, usual in _DEFAULTS.items():
         for name, value in usual.items():
             if FIELD[f"{part}.{name}"].default != value:
                 case[part] = {name: value} | (case.get(part) or {})
     return case
+
+
+def _each(part: str, content: Any, turn: Callable[[str, Any], dict[str, Any]]) -> Any:
+    """One part of a case turned: the notes one by one."""
+    if content is None:
+        return None
+    if part == "notes" and isinstance(content, list):
+        return [turn(part, note) for note in content]
+    return turn(part, None if part == "notes" else content)
 
 
 def _pack(part: str, content: Any) -> dict[str, Any]:
@@ -178,7 +180,7 @@ def _unpack(part: str, content: Any) -> dict[str, Any]:
         name = _NAMES.get(short, "")
         if f"{part}.{name}" not in FIELD:
             raise _bad(_UNKNOWN)
-        out[name] = _DEFAULTS[part].get(name) if value == [] else value
+        out[name] = _DEFAULTS[part].get(name, value) if value == [] else value
         if not _plain(out[name]):
             raise _bad(_UNKNOWN)
     return out

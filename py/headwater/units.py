@@ -139,7 +139,7 @@ def parse(text: object, quantity: str, low: float = -math.inf, high: float = mat
 
     A comma before exactly three last digits is a thousand, unless only the decimal reading is in range. A
     point there is a decimal point, unless only the thousand is in range; where both are, it is asked for
-    again. An altitude taken the wrong way makes a wrong go, so "1.609 m" is asked for again and "20,000 ft" is
+    again. An altitude taken the wrong way makes a wrong go: "1.609 m" is asked for again, and "20,000 ft" is
     out of range, never 20 ft.
 
     :param text: number and unit as typed; a plain number only for rotation and share
