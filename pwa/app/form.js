@@ -61,7 +61,7 @@ export function bindForm(hooks) {
       hooks.model().units[fields[key].kind] = unit;
       if (before?.text) {
         const shown = await hooks.convert(key, /[a-z°%"'″′]/i.test(before.text) ? before.text : `${before.text} ${before.unit}`, unit);
-        if (shown) input.value = shown.slice(0, shown.lastIndexOf(" "));
+        if (shown && input.value === before.text) input.value = shown.slice(0, shown.lastIndexOf(" "));
       }
     }
     part[key] = typedIn(box);

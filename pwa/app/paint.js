@@ -48,7 +48,10 @@ export function paintSheet(sheet, goTo) {
     at("lines").replaceChildren();
     return;
   }
-  at("lines").replaceChildren(...sheet.lines.map(line));
+  const first = sheet.lines.filter((/** @type {Line} */ row) => row.first);
+  const rest = sheet.lines.filter((/** @type {Line} */ row) => !row.first);
+  at("lines").replaceChildren(...first.map(line));
+  at("more-lines").replaceChildren(...rest.map(line));
   drawGauge(at("gauge"), sheet.gauge);
   say("ground", sheet.ground);
   list("reasons", sheet.reasons.map((/** @type {{text: string}} */ row) => row.text));
@@ -61,13 +64,15 @@ export function paintSheet(sheet, goTo) {
   paintCurve(sheet.curve);
 }
 
-/** @param {{key: string, label: string, value: string, span: string, aside: string}} row */
+/** @typedef {{key: string, first: boolean, label: string, value: string, span: string, aside: string}} Line */
+
+/** @param {Line} row */
 function line(row) {
   const box = make("div", undefined, `line line-${row.key}`);
   const value = make("dd");
   value.append(make("b", row.value));
-  if (row.span) value.append(make("span", `${screen.between} ${row.span}`, "span"));
-  if (row.aside) value.append(make("span", row.aside, "aside"));
+  const more = [row.span, row.aside].filter(Boolean).join(" · ");
+  if (more) value.append(make("span", more, "span"));
   box.append(make("dt", row.label), value);
   return box;
 }

@@ -1,11 +1,15 @@
 // The page's side of the service worker.
 //
 //   const offline = register({ onState, onWaiting });
-//   onState({ ready, build } | { fault })   every file is kept and whole, or why not
+//   onState({ ready, build, bad, fault })   every file is kept and whole, or which are not, or what went wrong
 //   onWaiting(take)                         a newer version is there; take() uses it now and reloads once
+//   offline.ran()                           this build has painted an answer: what came before it may go
+//   offline.repair()                        fetch again what is missing
 
 /**
- * @typedef {{ready?: boolean, build?: string, bad?: string[], fault?: string}} State
+ * No service workers here; no room on the phone; the download did not arrive whole.
+ * @typedef {"none" | "quota" | "install"} Fault
+ * @typedef {{ready?: boolean, build?: string, bad?: string[], fault?: Fault}} State
  * @typedef {{onState: (state: State) => void, onWaiting: (take: () => void) => void}} Hooks
  */
 
@@ -22,6 +26,9 @@ export function register(hooks) {
     if (known && taking) location.reload();
     else report();
   });
+  container.addEventListener("message", ({ data }) => {
+    if (data?.fault && !container.controller) hooks.onState({ fault: data.fault });
+  });
 
   async function begin() {
     try {
@@ -32,8 +39,8 @@ export function register(hooks) {
       const look = () => document.visibilityState === "visible" && registration.update().catch(() => {}); // no network: later
       document.addEventListener("visibilitychange", look);
       addEventListener("pageshow", look);
-    } catch (error) {
-      if (!container.controller) hooks.onState({ fault: String(error) });
+    } catch {
+      if (!container.controller) hooks.onState({ fault: "install" });
     }
     report();
   }
@@ -42,7 +49,6 @@ export function register(hooks) {
   function follow(worker) {
     worker?.addEventListener("statechange", () => {
       if (worker.state === "installed" && container.controller) offer(worker);
-      if (worker.state === "redundant" && !container.controller) hooks.onState({ fault: "install" });
     });
   }
 
@@ -66,8 +72,10 @@ export function register(hooks) {
     });
   }
 
+  /** Say what is kept; what an idle phone has thrown out is fetched again without being asked. */
   async function report() {
-    const state = await ask("state");
+    let state = await ask("state");
+    if (state?.bad?.length && navigator.onLine) state = await ask("repair");
     if (state) hooks.onState(state);
   }
 

@@ -1,87 +1,93 @@
 // The service worker: keeps every file, by hash, and serves from there. The build puts the lists in.
+//
+// Messages to it, each answered through its port: "state" (is every file here and whole?), "repair" (fetch what is
+// not), "ran" (this build works, older ones may go), "take" (use the waiting version now).
+// Messages from it: { fault: "quota" | "install" }, when a version could not be kept.
 
 /** @type {[string, string][]} path and SHA-256 */
 const shellFiles = SHELL_FILES;
 /** @type {[string, string][]} */
 const runtimeFiles = RUNTIME_FILES;
 
-const SHELL = `headwater-shell-${BUILD}`;
-const RUNTIME_CACHE = `headwater-runtime-${RUNTIME}`;
 const sw = /** @type {ServiceWorkerGlobalScope} */ (/** @type {unknown} */ (self));
-const page = new URL("index.html", sw.registration.scope).href;
+const scope = sw.registration.scope;
+// Another copy of the app may live elsewhere on this host: the folder is part of the name.
+const OURS = `headwater ${new URL(scope).pathname} `;
+const SHELLS = `${OURS}shell `;
+const SHELL = SHELLS + BUILD;
+const RUNTIME_CACHE = `${OURS}runtime ${RUNTIME}`;
 
 sw.addEventListener("install", (event) => event.waitUntil(install()));
 sw.addEventListener("activate", (event) => event.waitUntil(activate()));
 sw.addEventListener("fetch", (event) => {
-  if (event.request.method === "GET" && event.request.url.startsWith(sw.registration.scope)) event.respondWith(serve(event.request));
+  const { method, url } = event.request;
+  if (method === "GET" && url.startsWith(scope)) event.respondWith(serve(event.request));
 });
 sw.addEventListener("message", (event) => {
-  const answer = /** @type {Record<string, () => Promise<unknown>>} */ ({ state, take, ran, repair })[event.data?.kind];
-  if (answer) event.waitUntil(answer().then((value) => event.ports[0]?.postMessage(value), (error) => event.ports[0]?.postMessage({ fault: String(error) })));
+  const answers = /** @type {Record<string, () => Promise<unknown>>} */ ({ state, take, ran, repair });
+  const answer = answers[event.data?.kind];
+  if (answer) event.waitUntil(answer().then((value) => event.ports[0]?.postMessage(value)));
 });
 
-/** All or nothing: one bad file and this version is not installed. */
+/** All or nothing: one bad file and this version is not installed. The runtime's good files stay for the next try. */
 async function install() {
   try {
-    await fill(RUNTIME_CACHE, runtimeFiles);
-    await fill(SHELL, shellFiles);
+    await fill();
   } catch (error) {
     await caches.delete(SHELL);
+    const pages = await sw.clients.matchAll({ includeUncontrolled: true });
+    for (const client of pages) client.postMessage({ fault: faultOf(error) });
     throw error;
   }
 }
 
-/** Fetch what a cache does not hold whole; each file must be just what was built. @param {string} name @param {[string, string][]} files */
-async function fill(name, files) {
-  const cache = await caches.open(name);
-  for (const [path, hash] of files) {
-    const url = new URL(path, sw.registration.scope).href;
-    if (await holds(cache, url, hash)) continue;
-    const response = await fetch(url, { cache: "no-store", credentials: "same-origin" });
-    const body = response.ok ? await response.arrayBuffer() : new ArrayBuffer(0);
-    if ((await sha256(body)) !== hash) throw new Error(`${path} did not arrive whole`);
-    const type = response.headers.get("Content-Type") ?? "";
-    await cache.put(url, new Response(body, { headers: { "Content-Type": type, "Content-Length": String(body.byteLength) } }));
-  }
-}
-
-/** Whether a cache holds a file, byte for byte. @param {Cache} cache @param {string} url @param {string} hash */
-async function holds(cache, url, hash) {
-  const kept = await cache.match(url);
-  return kept !== undefined && (await sha256(await kept.arrayBuffer())) === hash;
-}
-
-/** @param {ArrayBuffer} body */
-async function sha256(body) {
-  const digest = new Uint8Array(await crypto.subtle.digest("SHA-256", body));
-  return Array.from(digest, (byte) => byte.toString(16).padStart(2, "0")).join("");
-}
-
-/** Take over at once on a first visit; of our own caches keep this build's and the one before it. */
+/** A first visit is served from here at once; of our shells this build's and the one before it stay. */
 async function activate() {
-  const shells = (await caches.keys()).filter((name) => name.startsWith("headwater-shell-") && name !== SHELL);
-  await Promise.all(shells.slice(0, -1).map((name) => caches.delete(name)));
+  const others = (await caches.keys()).filter((name) => name.startsWith(SHELLS) && name !== SHELL);
+  await Promise.all(others.slice(0, -1).map((name) => caches.delete(name)));
   await sw.clients.claim();
 }
 
-/** The page for every navigation, each file by its own name; what is not ours is an error, never the page. @param {Request} request */
+/** The page for its own address alone, each file by its name; what is not ours is an error, never the page. @param {Request} request */
 async function serve(request) {
-  const url = request.mode === "navigate" ? page : request.url.split(/[?#]/)[0];
-  for (const name of [SHELL, RUNTIME_CACHE]) {
-    const kept = await (await caches.open(name)).match(url);
+  const path = request.url.slice(scope.length).split(/[?#]/)[0];
+  const kept = await find(scope + (path || "index.html"));
+  return kept ?? fetch(request);
+}
+
+/** A file from this build's caches, else from the build before it, whose page may still be open. @param {string} url */
+async function find(url) {
+  const ours = (await caches.keys()).filter((name) => name.startsWith(OURS));
+  for (const name of new Set([SHELL, RUNTIME_CACHE, ...ours.reverse()])) {
+    const kept = ours.includes(name) && (await (await caches.open(name)).match(url));
     if (kept) return kept;
   }
-  return fetch(request);
 }
 
 /** Whether every file is here and whole. */
 async function state() {
   const bad = [];
-  for (const [name, files] of /** @type {const} */ ([[SHELL, shellFiles], [RUNTIME_CACHE, runtimeFiles]])) {
-    const cache = await caches.open(name);
-    for (const [path, hash] of files) if (!(await holds(cache, new URL(path, sw.registration.scope).href, hash))) bad.push(path);
+  for (const { path, url, hash, name } of files()) {
+    const kept = await (await caches.open(name)).match(url);
+    if (!(await isWhole(kept, hash))) bad.push(path);
   }
   return { ready: bad.length === 0, bad, build: BUILD };
+}
+
+/** Fetch again whatever is missing or broken; what is well stays untouched. */
+async function repair() {
+  try {
+    await fill();
+  } catch (error) {
+    return { ...(await state()), fault: faultOf(error) };
+  }
+  return state();
+}
+
+/** This build has run once: what came before may go. */
+async function ran() {
+  const ours = (await caches.keys()).filter((name) => name.startsWith(OURS));
+  await Promise.all(ours.filter((name) => name !== SHELL && name !== RUNTIME_CACHE).map((name) => caches.delete(name)));
 }
 
 /** The person wants this version now. */
@@ -89,14 +95,38 @@ async function take() {
   await sw.skipWaiting();
 }
 
-/** This build has run once: what came before may go. */
-async function ran() {
-  const ours = (await caches.keys()).filter((name) => name.startsWith("headwater-"));
-  await Promise.all(ours.filter((name) => name !== SHELL && name !== RUNTIME_CACHE).map((name) => caches.delete(name)));
+function* files() {
+  for (const [path, hash] of runtimeFiles) yield { path, hash, url: scope + path, name: RUNTIME_CACHE };
+  for (const [path, hash] of shellFiles) yield { path, hash, url: scope + path, name: SHELL };
 }
 
-/** Fetch again whatever is missing or broken. */
-async function repair() {
-  await install();
-  return state();
+/** Put in what the caches do not hold whole. */
+async function fill() {
+  await Promise.all(
+    Array.from(files(), async ({ path, url, hash, name }) => {
+      const cache = await caches.open(name);
+      if (await isWhole(await cache.match(url), hash)) return;
+      await cache.put(url, await bring(path, url, hash));
+    }),
+  );
 }
+
+/** One file, byte for byte as it was built: an older build's, else the browser's own copy, else a new one. @param {string} path @param {string} url @param {string} hash */
+async function bring(path, url, hash) {
+  const sources = [() => find(url), () => fetch(url), () => fetch(url, { cache: "reload" })];
+  for (const source of sources) {
+    const response = await source();
+    if (response && (await isWhole(response.clone(), hash))) return response;
+  }
+  throw new Error(`${path} did not arrive whole`);
+}
+
+/** @param {Response | undefined} response @param {string} hash */
+async function isWhole(response, hash) {
+  if (!response?.ok) return false;
+  const digest = new Uint8Array(await crypto.subtle.digest("SHA-256", await response.arrayBuffer()));
+  return Array.from(digest, (byte) => byte.toString(16).padStart(2, "0")).join("") === hash;
+}
+
+/** @param {unknown} error */
+const faultOf = (error) => (error instanceof Error && error.name === "QuotaExceededError" ? "quota" : "install");

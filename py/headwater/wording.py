@@ -378,8 +378,9 @@ def error_text(error: Mapping[str, Any]) -> str:
     return f"{given}{allowed}{error['action']}"
 
 
-def _lines(values: Mapping[str, Any], say: _Say) -> list[dict[str, str]]:
-    rows = []
+def _lines(values: Mapping[str, Any], say: _Say) -> list[dict[str, Any]]:
+    """What she holds and where she lets go; ``first`` marks what stands in the answer itself."""
+    rows: list[dict[str, Any]] = []
     for name, key, label in _LINES:
         rpm, power = values[name + "_rpm"], values[name + "_power"]
         if rpm is None:
@@ -391,6 +392,7 @@ def _lines(values: Mapping[str, Any], say: _Say) -> list[dict[str, str]]:
         rows.append(
             {
                 "key": key,
+                "first": name != "flare",
                 "label": label,
                 "value": value,
                 "span": say.span(rpm["low"], rpm["high"], "rotation"),
@@ -401,6 +403,7 @@ def _lines(values: Mapping[str, Any], say: _Say) -> list[dict[str, str]]:
     rows.append(
         {
             "key": "plan",
+            "first": False,
             "label": "Plan",
             "value": say.rpm(plan["value"]),
             "span": say.span(plan["low"], plan["high"], "rotation"),
@@ -410,7 +413,7 @@ def _lines(values: Mapping[str, Any], say: _Say) -> list[dict[str, str]]:
     full = values["full_speed"]
     if full and full["value"] > 0:
         rows.append(
-            {"key": "wide_open", "label": "Wide open from", "value": say.from_speed(full["value"]), "span": "", "aside": ""}
+            {"key": "wide_open", "first": True, "label": "Wide open from", "value": say.from_speed(full["value"]), "span": "", "aside": ""}
         )
     return rows
 
@@ -513,9 +516,9 @@ SCREEN = {
     "add_note": "Add a note",
     "remove_note": "Remove this note",
     "typical": "Typical",
-    "how": "How to get it",
+    "how": "How to get this",
     "demo_open": "Show a demo boat",
-    "demo_on": "Demo boat, river and notes, all invented.",
+    "demo_on": "Demo, all invented.",
     "demo_close": "Back to my boat",
     "share": "Make a link",
     "shared": "Link copied.",
@@ -526,6 +529,7 @@ SCREEN = {
     "make_mine": "Make it mine",
     "make_mine_warns": "Your own boat and notes will be replaced. Go on?",
     "sent_close": "Close",
+    "lines": "Plan and revs",
     "reasons": "Why",
     "equivalents": "Your notes here",
     "ledger": "Head at the pump",
