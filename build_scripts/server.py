@@ -21,7 +21,10 @@ TYPES = {
     ".png": "image/png",
     ".txt": "text/plain; charset=utf-8",
 }
-FRESH = ("index.html", "sw.js", "manifest.webmanifest")  # asked for anew each time; all else is named by its content
+LASTING = (
+    "app",
+    "runtime",
+)  # folders whose files are named by their content or version; all else is asked for anew
 SECURITY = {
     "X-Content-Type-Options": "nosniff",
     "Referrer-Policy": "no-referrer",
@@ -47,13 +50,19 @@ class Handler(SimpleHTTPRequestHandler):
 
     def _send(self, body: bool) -> None:
         root = Path(self.directory).resolve()
-        name = unquote(urlsplit(self.path).path).lstrip("/") or "index.html"
+        name = unquote(urlsplit(self.path).path).lstrip("/")
+        if not name or name.endswith("/"):
+            name += "index.html"
         file = (root / name).resolve()
         if root not in file.parents or not file.is_file() or file.suffix in (".br", ".gz"):
             self._reply(404, b"not found", {"Content-Type": TYPES[".txt"], "Cache-Control": "no-store"}, body)
             return
-        headers = {"Content-Type": TYPES.get(file.suffix, "application/octet-stream"), "Vary": "Accept-Encoding"}
-        headers["Cache-Control"] = "no-cache" if name in FRESH else "public, max-age=31536000, immutable"
+        headers = {
+            "Content-Type": TYPES.get(file.suffix, "application/octet-stream"),
+            "Vary": "Accept-Encoding",
+        }
+        lasting = any(folder.name in LASTING for folder in file.relative_to(root).parents)
+        headers["Cache-Control"] = "public, max-age=31536000, immutable" if lasting else "no-cache"
         accepted = self.headers.get("Accept-Encoding", "")
         for coding, ending in (("br", ".br"), ("gzip", ".gz")):
             packed = file.with_name(file.name + ending)
@@ -77,7 +86,9 @@ class Handler(SimpleHTTPRequestHandler):
             print(f"{self.command} {self.path} {args[1] if len(args) > 1 else ''}", flush=True)
 
 
-def make(folder: Path, host: str, port: int, tls: ssl.SSLContext | None = None, quiet: bool = True) -> ThreadingHTTPServer:
+def make(
+    folder: Path, host: str, port: int, tls: ssl.SSLContext | None = None, quiet: bool = True
+) -> ThreadingHTTPServer:
     """A server of a built folder; port 0 takes a free one."""
     policy = (folder / "policy.txt").read_text().strip() + "; frame-ancestors 'none'"
     handler = functools.partial(Handler, directory=str(folder), policy=policy, quiet=quiet)
