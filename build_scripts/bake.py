@@ -1,4 +1,4 @@
-"""The phone's Python: runtime files as npm ships them, and the core with its part of the standard library in one zip."""
+"""The phone's Python: the runtime as npm ships it, and the core with its standard library, baked."""
 
 import json
 import os
@@ -37,7 +37,18 @@ def tools(names: tuple[str, ...] = TOOLS) -> list[Path]:
     for name in names:
         folder = CACHE / "wheels" / name.replace("==", "-")
         if not folder.is_dir() or not list(folder.glob("*.whl")):
-            pip = [sys.executable, "-m", "pip", "download", "--quiet", "--no-deps", "--only-binary", ":all:", "--python-version", "3.14"]
+            pip = [
+                sys.executable,
+                "-m",
+                "pip",
+                "download",
+                "--quiet",
+                "--no-deps",
+                "--only-binary",
+                ":all:",
+                "--python-version",
+                "3.14",
+            ]
             subprocess.run([*pip, "--dest", str(folder), name], check=True)
         found.append(next(folder.glob("*.whl")))
     return found

@@ -1,4 +1,4 @@
-"""Builds dist/: plain static files for any host. Run under the venv's Python; serve.py and test.py see to that."""
+"""Builds dist/, plain static files for any host; serve.py and test.py call it."""
 
 import hashlib
 import json
@@ -42,7 +42,9 @@ def build(out: Path = DIST) -> Path:
         "core": core,
         "runtime": runtime,
     }
-    policy = page.render(out, {key: str(path.relative_to(out).as_posix()) for key, path in links.items()}, demo)
+    policy = page.render(
+        out, {key: str(path.relative_to(out).as_posix()) for key, path in links.items()}, demo
+    )
     shutil.copytree(ROOT / "static" / "licences", out / "licences")
     bundle.service_worker(PWA / "sw" / "sw.js", out, pack.precache(out))
     (out / "policy.txt").write_text(policy + "\n")

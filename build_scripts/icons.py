@@ -17,7 +17,8 @@ def draw(svg: Path, folder: Path) -> None:
         _write(text, size, folder / f"icon-{size}.png")
     inner = text[text.index(">", text.index("<svg")) + 1 : text.rindex("</svg>")]
     maskable = (
-        '<svg xmlns="http://www.w3.org/2000/svg" viewBox="0 0 512 512"><rect width="512" height="512" fill="#fff"/>'
+        '<svg xmlns="http://www.w3.org/2000/svg" viewBox="0 0 512 512">'
+        '<rect width="512" height="512" fill="#fff"/>'
         f'<g transform="translate(77 77) scale(0.7)">{inner}</g></svg>'
     )
     _write(maskable, 512, folder / "maskable-512.png")

@@ -1,4 +1,6 @@
-"""Sets a fresh machine up: checks what must be there, then venv, npm packages and browsers. Standard library only."""
+"""Sets a fresh machine up: prerequisites, venv, npm packages, browsers. Standard library only."""
+
+from __future__ import annotations  # so that an older Python gets as far as being told
 
 import hashlib
 import json
@@ -28,7 +30,7 @@ def say(text: str) -> None:
 def check_prerequisites() -> None:
     """Stop with a clear message where Python, Node or npm is missing or too old."""
     missing = []
-    if sys.version_info < (3, 11):
+    if sys.version_info < (3, 11):  # noqa: UP036, whoever starts this may have an older one
         missing.append(f"Python 3.11 or newer (this is {sys.version.split()[0]})")
     node = shutil.which("node")
     if node is None:
@@ -59,13 +61,14 @@ def prepare(extras: str) -> None:
     """
     check_prerequisites()
     CACHE.mkdir(exist_ok=True)
-    stamp, wanted, done = _stamped(f"python-{extras.replace(',', '-')}", ROOT / "pyproject.toml")
+    pins = Path(__file__).with_name("constraints.txt")
+    stamp, wanted, done = _stamped(f"python-{extras.replace(',', '-')}", ROOT / "pyproject.toml", pins)
     if not (done and PYTHON.exists()):
         say("Python packages into .venv")
         if not PYTHON.exists():
             subprocess.run([sys.executable, "-m", "venv", str(VENV)], check=True)
         pip = [str(PYTHON), "-m", "pip", "install", "--quiet", "--disable-pip-version-check"]
-        subprocess.run([*pip, "-e", f"{ROOT}[{extras}]"], check=True)
+        subprocess.run([*pip, "-c", str(pins), "-e", f"{ROOT}[{extras}]"], check=True)
         stamp.write_text(wanted)
     stamp, wanted, done = _stamped("npm", PWA / "package-lock.json", PWA / "package.json")
     if not (done and (PWA / "node_modules").is_dir()):
@@ -84,8 +87,8 @@ def in_venv(script: str) -> None:
 def browsers() -> dict[str, str]:
     """Where the three engines are, brought here if need be; says which were taken.
 
-    Chromium: what Playwright installs, else the system's, else Debian's package. Firefox and WebKit: the system's,
-    else Debian's packages, for Playwright's own builds of the two are not what people run.
+    Chromium: what Playwright installs, else the system's, else Debian's package. Firefox and WebKit: the
+    system's, else Debian's packages, for Playwright's own builds of the two are not what people run.
     """
     kept = CACHE / "browsers.json"
     if kept.exists():
@@ -111,14 +114,20 @@ def browsers() -> dict[str, str]:
 def _playwright_chromium() -> str | None:
     try:
         done = subprocess.run(
-            [str(PYTHON), "-m", "playwright", "install", "chromium"], capture_output=True, text=True, timeout=300
+            [str(PYTHON), "-m", "playwright", "install", "chromium"],
+            capture_output=True,
+            text=True,
+            timeout=300,
         )
     except subprocess.TimeoutExpired:
         return None
     if done.returncode:
         say("Playwright cannot fetch its Chromium here; looking for the system's")
         return None
-    code = "from playwright.sync_api import sync_playwright as s\nwith s() as p: print(p.chromium.executable_path)"
+    code = (
+        "from playwright.sync_api import sync_playwright\n"
+        "with sync_playwright() as playwright: print(playwright.chromium.executable_path)"
+    )
     path = subprocess.run([str(PYTHON), "-c", code], capture_output=True, text=True).stdout.strip()
     return path if path and Path(path).exists() else None
 
@@ -128,7 +137,10 @@ def _system(name: str) -> str | None:
         ready = shutil.which("WebKitWebDriver") and shutil.which("Xvfb")
         browsers = sorted(Path("/usr/lib").glob("*/webkit2gtk-4.1/MiniBrowser")) if ready else []
         return str(browsers[0]) if browsers else None
-    names = {"chromium": ("chromium", "chromium-browser", "google-chrome"), "firefox": ("firefox-esr", "firefox")}[name]
+    names = {
+        "chromium": ("chromium", "chromium-browser", "google-chrome"),
+        "firefox": ("firefox-esr", "firefox"),
+    }[name]
     return next((path for path in map(shutil.which, names) if path), None)
 
 
@@ -141,4 +153,6 @@ def _debian(packages: list[str]) -> None:
     quiet = {**os.environ, "DEBIAN_FRONTEND": "noninteractive"}
     wait = ["-o", "DPkg::Lock::Timeout=300"]
     subprocess.run([*root, apt, "update", "-qq", *wait], env=quiet)
-    subprocess.run([*root, apt, "install", "-y", "-qq", "--no-install-recommends", *wait, *packages], env=quiet)
+    subprocess.run(
+        [*root, apt, "install", "-y", "-qq", "--no-install-recommends", *wait, *packages], env=quiet
+    )

@@ -6,6 +6,7 @@ import shutil
 from pathlib import Path
 
 import brotli
+
 from machine import CACHE
 
 _COMPRESSED = (".html", ".js", ".mjs", ".css", ".json", ".webmanifest", ".wasm", ".zip", ".svg", ".txt")
@@ -17,15 +18,22 @@ def _hash(file: Path) -> str:
 
 def precache(out: Path) -> dict:
     """What the service worker keeps: each file's path and SHA-256, the runtime's apart from the shell's."""
-    files = {path.relative_to(out).as_posix(): _hash(path) for path in sorted(out.rglob("*")) if path.is_file()}
+    files = {
+        path.relative_to(out).as_posix(): _hash(path) for path in sorted(out.rglob("*")) if path.is_file()
+    }
     shell = [[name, digest] for name, digest in files.items() if not name.startswith("runtime/")]
     runtime = [[name, digest] for name, digest in files.items() if name.startswith("runtime/")]
     build = hashlib.sha256("".join(digest for _, digest in shell).encode()).hexdigest()[:10]
-    return {"SHELL_FILES": shell, "RUNTIME_FILES": runtime, "BUILD": build, "RUNTIME": runtime[0][0].split("/")[1]}
+    return {
+        "SHELL_FILES": shell,
+        "RUNTIME_FILES": runtime,
+        "BUILD": build,
+        "RUNTIME": runtime[0][0].split("/")[1],
+    }
 
 
 def compress(out: Path) -> None:
-    """A brotli 11 and a gzip 9 twin beside each file; kept by content, for brotli takes long over the runtime."""
+    """A brotli 11 and a gzip 9 twin beside each file; kept by content, for brotli takes its time."""
     kept = CACHE / "packed"
     kept.mkdir(parents=True, exist_ok=True)
     for file in sorted(out.rglob("*")):
@@ -35,6 +43,10 @@ def compress(out: Path) -> None:
             done = kept / (_hash(file) + ending)
             if not done.exists():
                 content = file.read_bytes()
-                packed = brotli.compress(content, quality=11) if ending == ".br" else gzip.compress(content, 9, mtime=0)
+                packed = (
+                    brotli.compress(content, quality=11)
+                    if ending == ".br"
+                    else gzip.compress(content, 9, mtime=0)
+                )
                 done.write_bytes(packed)
             shutil.copy(done, file.with_name(file.name + ending))

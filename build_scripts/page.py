@@ -1,4 +1,4 @@
-"""The page and the manifest, rendered from the core's fields and sentences, with the policy that guards them."""
+"""The page and the manifest, rendered from the core's fields and sentences, and the page's policy."""
 
 import base64
 import hashlib
@@ -7,11 +7,21 @@ import re
 from pathlib import Path
 
 import jinja2
+
 from machine import PWA
 
-_POLICY = (
-    "default-src 'none'; script-src 'self' 'wasm-unsafe-eval' 'sha256-{guard}'; worker-src 'self'; connect-src 'self'; "
-    "style-src 'self'; img-src 'self' data:; manifest-src 'self'; base-uri 'none'; form-action 'none'"
+_POLICY = "; ".join(
+    (
+        "default-src 'none'",
+        "script-src 'self' 'wasm-unsafe-eval' 'sha256-{guard}'",
+        "worker-src 'self'",
+        "connect-src 'self'",
+        "style-src 'self'",
+        "img-src 'self' data:",
+        "manifest-src 'self'",
+        "base-uri 'none'",
+        "form-action 'none'",
+    )
 )
 
 
@@ -46,12 +56,17 @@ def render(out: Path, links: dict[str, str], demo: dict) -> str:
         "screen": wording.SCREEN,
         "systems": units.SYSTEMS,
         "fields": {
-            row["key"]: {"kind": row["kind"], "units": row["units"], "choices": row["choices"]} for row in table
+            row["key"]: {"kind": row["kind"], "units": row["units"], "choices": row["choices"]}
+            for row in table
         },
         "demo": demo["case"],
     }
     environment = jinja2.Environment(
-        loader=jinja2.FileSystemLoader(PWA), autoescape=True, undefined=jinja2.StrictUndefined, trim_blocks=True, lstrip_blocks=True
+        loader=jinja2.FileSystemLoader(PWA),
+        autoescape=True,
+        undefined=jinja2.StrictUndefined,
+        trim_blocks=True,
+        lstrip_blocks=True,
     )
     context = {
         "fields": {row["key"]: row for row in table},
@@ -74,8 +89,16 @@ def render(out: Path, links: dict[str, str], demo: dict) -> str:
 
 
 def _manifest(screen: dict[str, str]) -> dict:
-    icons = [{"src": f"icons/icon-{size}.png", "sizes": f"{size}x{size}", "type": "image/png"} for size in (192, 512)]
-    maskable = {"src": "icons/maskable-512.png", "sizes": "512x512", "type": "image/png", "purpose": "maskable"}
+    icons = [
+        {"src": f"icons/icon-{size}.png", "sizes": f"{size}x{size}", "type": "image/png"}
+        for size in (192, 512)
+    ]
+    maskable = {
+        "src": "icons/maskable-512.png",
+        "sizes": "512x512",
+        "type": "image/png",
+        "purpose": "maskable",
+    }
     return {
         "id": "./?app=headwater",
         "name": screen["title"],

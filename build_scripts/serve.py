@@ -1,5 +1,7 @@
 """Sets the machine up, builds the app, serves it and opens the check with the demo boat."""
 
+from __future__ import annotations  # so that an older Python gets as far as being told
+
 import argparse
 import ipaddress
 import socket
@@ -17,7 +19,9 @@ def main() -> None:
     parser = argparse.ArgumentParser(description=__doc__)
     parser.add_argument("--port", type=int, default=8321)
     parser.add_argument("--no-open", action="store_true", help="do not open a browser")
-    parser.add_argument("--https", action="store_true", help="for a phone in the same network, own certificate")
+    parser.add_argument(
+        "--https", action="store_true", help="for a phone in the same network, own certificate"
+    )
     options = parser.parse_args()
     machine.prepare("build")
     machine.in_venv(__file__)

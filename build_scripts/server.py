@@ -1,4 +1,4 @@
-"""Serves the built app as a plain static host would: types, caching, security headers, files compressed at build."""
+"""Serves the built app as a static host would: types, caching, security headers, compressed files."""
 
 import argparse
 import functools

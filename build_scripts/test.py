@@ -1,5 +1,7 @@
 """Sets the machine up, builds, lints and runs every test; further arguments go to pytest."""
 
+from __future__ import annotations  # so that an older Python gets as far as being told
+
 import subprocess
 import sys
 import time

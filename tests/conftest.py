@@ -104,8 +104,9 @@ def get(server: Server) -> Callable[..., urllib.request.addinfourl]:
 @pytest.fixture(scope="session")
 def chromium() -> "Iterator[Browser]":
     """Chromium, by Playwright; each test opens a context of its own."""
-    import machine
     from playwright.sync_api import sync_playwright
+
+    import machine
 
     with sync_playwright() as playwright:
         browser = playwright.chromium.launch(

@@ -19,7 +19,7 @@ CONTROLLED = "() => navigator.serviceWorker.controller !== null"
 WAITING = "async () => (await navigator.serviceWorker.getRegistration()).waiting !== null"
 TAKE = """async () => {
   const { waiting } = await navigator.serviceWorker.getRegistration();
-  const changed = new Promise(resolve => navigator.serviceWorker.addEventListener('controllerchange', resolve));
+  const changed = new Promise(done => navigator.serviceWorker.addEventListener('controllerchange', done));
   waiting.postMessage({ kind: 'take' });
   await changed;
 }"""
@@ -208,7 +208,9 @@ def test_a_repair_without_network_leaves_what_is_there(page: Any, server: Any) -
     visit(page, server.url)
     assert state(page)["ready"]
     page.evaluate(
-        "async () => { for (const name of await caches.keys()) await (await caches.open(name)).delete('manifest.webmanifest') }"
+        """async () => {
+      for (const name of await caches.keys()) await (await caches.open(name)).delete("manifest.webmanifest");
+    }"""
     )
     server.kill()
     mended = ask(page, "repair")
