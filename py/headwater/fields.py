@@ -508,7 +508,9 @@ class _Reader:
             return Readings({part: {} for part in _PARTS[:3]} | {"notes": []}, set(), {}, self.errors, {})
         for key in case:
             if key not in _PARTS:
-                self.fail(quote(key), None, ", ".join(_PARTS), "Leave this out: it is no part of a case.")
+                self.fail(
+                    quote(key) or "case", None, ", ".join(_PARTS), "Leave this out: it is no part of a case."
+                )
         values: dict[str, Any] = {part: self.part(part, part, case.get(part)) for part in _PARTS[:3]}
         notes = enumerate(self.notes(case))
         values["notes"] = [self.part("notes", f"notes[{i}]", note) for i, note in notes]
@@ -550,8 +552,8 @@ class _Reader:
         values: Values = {}
         for name, given in typed.items():
             field = table.get(name) if isinstance(name, str) else None
-            key = f"{path}.{quote(name)}"
-            if field is not None:
+            key = f"{path}.{name if field else quote(name)}"
+            if field:
                 if given is not None:  # a null is left out
                     self.one(field, key, given, values)
             elif isinstance(name, str) and f"{part}.{name}" in NOT_YET:

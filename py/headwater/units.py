@@ -148,7 +148,6 @@ def parse(text: object, quantity: str, low: float = -math.inf, high: float = mat
     :param high: largest SI value allowed
     Raises BadReading, without a field.
     """
-    units = ", ".join(QUANTITIES[quantity])
 
     def bad(action: str, unit: Unit | None = None) -> BadReading:
         return BadReading("", quote(text), allowed(quantity, low, high, unit and unit.symbol), action)
@@ -160,9 +159,9 @@ def parse(text: object, quantity: str, low: float = -math.inf, high: float = mat
     if not name:
         unit = {"rotation": QUANTITIES["rotation"]["rpm"], "share": _PLAIN_SHARE}.get(quantity)
         if unit is None:
-            raise bad(f"Add the unit: {units}.")
+            raise bad(f"Add the unit: {', '.join(QUANTITIES[quantity])}.")
     if unit is None:
-        raise bad(f"Use one of these units: {units}.")
+        raise bad(f"Use one of these units: {', '.join(QUANTITIES[quantity])}.")
     if quantity == "altitude" and unit.step >= 1 and abs(numbers[0]) > abs(numbers[-1]):
         numbers = numbers[:1]
     meant = [(number, (number + unit.offset) * unit.factor) for number in numbers]
