@@ -2,8 +2,7 @@
 
 import json
 import math
-from collections.abc import Callable, Iterable, Mapping, Sequence
-from itertools import pairwise
+from collections.abc import Callable, Iterable, Mapping
 from typing import Any
 
 from headwater import air, fields, jet, notes, share, suction, verdict, water, wording
@@ -25,6 +24,7 @@ from headwater.doubt import (
     Setting,
     setting,
     spread,
+    sumprod,
 )
 from headwater.errors import BadReading
 from headwater.fields import FIELD, Readings
@@ -34,8 +34,8 @@ from headwater.suction import State
 
 CONTRACT = 1
 CURVE_SPEEDS = [float(v) for v in range(26)]  # m/s
-_NODES = (0.0, 5.0, 11.0, 18.0, 25.0)  # m/s, where the curve's limits and bands are worked out in full
-_NODE_PASSES = 2  # rounds in finding a node's holding rpm: within 0.1 % of all
+_NODES = (0.0, 8.0, 16.0, 25.0)  # m/s, where the curve's limits and bands are worked out in full
+_NODE_PASSES = 2  # rounds in finding a node's holding rpm
 _SEA_LEVEL_WATER = 288.15  # K, for the share of what she holds at sea level
 _COEFFICIENTS = (
     "boat.wake_fraction",
@@ -60,7 +60,7 @@ def answer(case: Any, units: str | Mapping[str, str] | None = None) -> dict[str,
 
     :param case: readings by key, quantities as strings with a unit
     :param units: "us", "metric" or a unit for each quantity, for the sentences; by default what was typed
-    :returns: verdict, headline, reasons, values with bands, curve and the rest; with errors, no verdict and no values
+    :returns: verdict, headline, reasons, values with bands, curve and the rest; with errors no values
     Raises nothing: bad readings come back in ``errors``, all at once.
     """
     readings = fields.read(case)
@@ -126,7 +126,15 @@ def inputs_of(values: Mapping[str, Any]) -> Inputs:
     """Central inputs by key, SI, from the readings of a case."""
     boat, place = values["boat"], values["place"]
     inputs = {key: float(boat[key.partition(".")[2]]) for key in _COEFFICIENTS}
-    for key in ("jets", "nozzle_diameter", "impeller_diameter", "shaft_depth", "wide_open_rpm", "engine_power", "gear_ratio"):
+    for key in (
+        "jets",
+        "nozzle_diameter",
+        "impeller_diameter",
+        "shaft_depth",
+        "wide_open_rpm",
+        "engine_power",
+        "gear_ratio",
+    ):
         inputs["boat." + key] = float(boat[key])
     inputs["hub_share"] = boat["hub_diameter"] / boat["impeller_diameter"]
     inputs["place.air_pressure"] = air_pressure(place)
@@ -136,7 +144,9 @@ def inputs_of(values: Mapping[str, Any]) -> Inputs:
     return inputs
 
 
-def spans_of(values: Mapping[str, Any], given: Iterable[str], inputs: Inputs) -> dict[str, tuple[float, float]]:
+def spans_of(
+    values: Mapping[str, Any], given: Iterable[str], inputs: Inputs
+) -> dict[str, tuple[float, float]]:
     """Low and high end of each uncertain input (95 % span), by key, SI."""
     boat, papers = values["boat"], values["boat"]["rpm_from"] == "papers"
     spans = {}
@@ -187,7 +197,9 @@ def seen_of(values: Mapping[str, Any]) -> list[Seen]:
         temperature = note["water_temperature"]
         density = water.density(temperature)
         warm = FIELD["place.water_temperature"].tolerance
-        by_heat = (water.vapor_pressure(temperature + warm) - water.vapor_pressure(temperature)) / (density * GRAVITY)
+        by_heat = (water.vapor_pressure(temperature + warm) - water.vapor_pressure(temperature)) / (
+            density * GRAVITY
+        )
         here = _altitude_alone(note) is not None and _altitude_alone(note) == _altitude_alone(place)
         by_air = 0.0 if here else pressure_doubt(note) / (density * GRAVITY)
         seen.append(
@@ -213,8 +225,20 @@ def _altitude_alone(place: Mapping[str, Any]) -> float | None:
     return float(place["altitude"])
 
 
-def _value(value: float | None, unit: str, low: float | None, high: float | None, mark: str, **more: bool) -> dict[str, Any]:
+def _value(
+    value: float | None, unit: str, low: float | None, high: float | None, mark: str, **more: bool
+) -> dict[str, Any]:
     return {"value": value, "unit": unit, "low": low, "high": high, "mark": mark, **more}
+
+
+def _lagrange(at: float) -> tuple[float, ...]:
+    """Shares of the nodes in a value between them, by the polynomial through all."""
+    return tuple(
+        math.prod((at - other) / (node - other) for other in _NODES if other != node) for node in _NODES
+    )
+
+
+_CURVE_SHARES = [(speed, _lagrange(speed)) for speed in CURVE_SPEEDS]
 
 
 class _Answer:
@@ -230,10 +254,14 @@ class _Answer:
         self.check = self.reckon(inputs_of(self.values), self.speed)
         self.held_to = self.check.holding(self.speed)
         standing = self.speed == 0
-        self.held_standing = self.held_to if standing else self.check.holding(0.0, min(self.check.rpm, self.wide_open))
+        self.held_standing = (
+            self.held_to if standing else self.check.holding(0.0, min(self.check.rpm, self.wide_open))
+        )
         self.lines = self._lines()
         papers = self.boat["rpm_from"] == "papers" and "power" in self.plan
-        self.decision = verdict.steady(self.check, self.typed, papers, self.held_to.rpm if self.held_to else None)
+        self.decision = verdict.steady(
+            self.check, self.typed, papers, self.held_to.rpm if self.held_to else None
+        )
 
     def reckon(self, inputs: Inputs, speed: float) -> Reckoning:
         fixed = self.boat.get("suction_specific_speed")
@@ -252,7 +280,9 @@ class _Answer:
         if "rpm" in self.plan:
             return float(self.plan["rpm"])
         if "power" in self.plan:
-            absorbed = jet.absorption(inputs["boat.engine_power"], inputs["boat.wide_open_rpm"], inputs["boat.jets"])
+            absorbed = jet.absorption(
+                inputs["boat.engine_power"], inputs["boat.wide_open_rpm"], inputs["boat.jets"]
+            )
             return float((self.plan["power"] / self.running / absorbed) ** (1 / 3))
         return float(self.plan.get("throttle", 1.0) * inputs["boat.wide_open_rpm"])
 
@@ -261,7 +291,7 @@ class _Answer:
         return float(self.check.centre.unit.absorption * self.running * rpm**3)
 
     def build(self) -> dict[str, Any]:
-        check, decision = self.check, self.decision
+        decision = self.decision
         curve = self._curve()
         equivalents = self._equivalents()
         facts = self._facts(curve, equivalents)
@@ -284,15 +314,15 @@ class _Answer:
 
     # Lines and curve
 
-    def _held_line(self, held: Holding, speed: float, bounds: list[Bound], steps: Sequence[float | None]) -> Line:
+    def _held_line(self, held: Holding, speed: float, bounds: list[Bound]) -> Line:
         """The line that holds, with the band of what sets it."""
         check = self.check
         if check.fixed is not None:
-            return check.line(held.x, speed, held.kind, (0.0, 0.0), (0, 0), held.rpm, steps)
+            return check.line(held.x, speed, held.kind, (0.0, 0.0), (0, 0), held.rpm, held.steps)
         near = min((b for b in bounds if not b.hint), key=lambda b: abs(b.x - held.x))
         own = SIGMAS * near.sigma
         follows = near.note if held.kind in ("proven", "let_go", "disagree") else (0, 0)
-        return check.line(held.x, speed, held.kind, (own, own), follows, held.rpm, steps)
+        return check.line(held.x, speed, held.kind, (own, own), follows, held.rpm, held.steps)
 
     def _lines_at(self, speed: float, held: Holding | None, exact: bool) -> dict[str, Line]:
         """The lines that can be drawn at a boat speed: holding, let_go, flare.
@@ -313,7 +343,7 @@ class _Answer:
 
         lines = {}
         if held:
-            lines["holding"] = self._held_line(held, speed, known.bounds, shared or check.asked_steps(rpm, speed))
+            lines["holding"] = self._held_line(held, speed, known.bounds)
         if check.capped:
             low, middle, high = (check.limit(known, share) for share in (LOW, MIDDLE, HIGH))
             if low is not None and middle is not None and high is not None:
@@ -332,11 +362,11 @@ class _Answer:
         return self._lines_at(self.speed, self.held_to, exact=True)
 
     def _curve(self) -> dict[str, Any]:
-        """The lines from 0 to 25 m/s: each rpm solved at each speed, limit and band interpolated between nodes."""
+        """The lines from 0 to 25 m/s: rpm solved at each speed, limit and band interpolated between nodes."""
         check, nodes, held = self.check, [], self.held_standing
         for speed in _NODES:
             if speed:
-                held = check.holding(speed, held.rpm if held else None, _NODE_PASSES)
+                held = check.holding(speed, check.rpm_at(held.x, speed) if held else None, _NODE_PASSES)
             nodes.append(self._lines_at(speed, held, exact=False))
         curve: dict[str, Any] = {"boat_speed": CURVE_SPEEDS}
         for name in ("holding", "let_go", "flare"):
@@ -350,25 +380,18 @@ class _Answer:
     def _curve_line(self, nodes: list[Line]) -> tuple[dict[str, list[float]], dict[str, list[float]]]:
         rpm: dict[str, list[float]] = {"value": [], "low": [], "high": []}
         power: dict[str, list[float]] = {"value": [], "low": [], "high": []}
-        for k, (first, second) in enumerate(pairwise(nodes)):
-            v0, v1 = _NODES[k], _NODES[k + 1]
-            ends = [
-                (first.low / first.rpm, second.low / second.rpm),
-                (first.high / first.rpm, second.high / second.rpm),
-                (first.power_low, second.power_low),
-                (first.power_high, second.power_high),
-            ]
-            for speed in CURVE_SPEEDS[int(v0) : int(v1) + (k == len(nodes) - 2)]:
-                share = (speed**2 - v0**2) / (v1**2 - v0**2)  # what moves the limit goes with the ram head
-                value = self.check.rpm_at(first.x + share * (second.x - first.x), speed)
-                at_rpm = self.power(value)
-                rpm_low, rpm_high, power_low, power_high = (one + share * (two - one) for one, two in ends)
-                rpm["value"].append(value)
-                rpm["low"].append(value * rpm_low)
-                rpm["high"].append(value * rpm_high)
-                power["value"].append(at_rpm)
-                power["low"].append(at_rpm * power_low)
-                power["high"].append(at_rpm * power_high)
+        ends = [(n.x, n.low / n.rpm, n.high / n.rpm, n.power_low, n.power_high) for n in nodes]
+        columns = list(zip(*ends, strict=True))
+        for speed, shares in _CURVE_SHARES:
+            x, rpm_low, rpm_high, power_low, power_high = (sumprod(shares, column) for column in columns)
+            value = self.check.rpm_at(x, speed)
+            at_rpm = self.power(value)
+            rpm["value"].append(value)
+            rpm["low"].append(value * rpm_low)
+            rpm["high"].append(value * rpm_high)
+            power["value"].append(at_rpm)
+            power["low"].append(at_rpm * power_low)
+            power["high"].append(at_rpm * power_high)
         return rpm, power
 
     def _speed_for(self, rpm: float, curve: Mapping[str, Any]) -> float | None:
@@ -384,7 +407,7 @@ class _Answer:
         v0, v1 = CURVE_SPEEDS[after - 1], CURVE_SPEEDS[after]
         rise = (holds[after] - holds[after - 1]) / (v1 - v0)
         speed = v0 + (rpm - holds[after - 1]) / rise
-        found = self.check.holding(speed, rpm)
+        found = self.check.holding(speed, rpm, passes=1)
         return max(speed + (rpm - found.rpm) / rise, 0.0) if found else None
 
     # Parts of the answer
@@ -435,29 +458,44 @@ class _Answer:
         facts["plan_speed"] = self._speed_for(check.rpm, curve) if asks_speed else facts["full_speed"]
         lead = self._lead(equivalents)
         if lead:
-            facts["note"] = {**lead, "label": self.values["notes"][lead["note"]].get("label", ""), "place": self.place.get("label", "")}
+            facts["note"] = {
+                **lead,
+                "label": self.values["notes"][lead["note"]].get("label", ""),
+                "place": self.place.get("label", ""),
+            }
         if check.contradiction:
             facts["disagree"] = [self._named(check.seen[i].note) for i in check.contradiction]
         facts["off"] = [self._named(note) for note in check.without_head]
-        facts["speedless"] = [self._named(i) for i, note in enumerate(self.values["notes"]) if "boat_speed" not in note]
+        facts["speedless"] = [
+            self._named(i) for i, note in enumerate(self.values["notes"]) if "boat_speed" not in note
+        ]
         return facts
 
     def _named(self, index: int) -> dict[str, Any]:
         note = self.values["notes"][index]
-        return {"index": index, "rpm": note["rpm"], "outcome": note["outcome"], "label": note.get("label", "")}
+        return {
+            "index": index,
+            "rpm": note["rpm"],
+            "outcome": note["outcome"],
+            "label": note.get("label", ""),
+        }
 
     def _lead(self, equivalents: list[dict[str, Any]]) -> dict[str, Any] | None:
-        """The equivalent that leads the answer: the best held note's; without one the lowest of what did not hold."""
+        """The equivalent that leads the answer: the best held note's, else the lowest that did not hold."""
         check = self.check
         known = check.known_at_plan
         for row, seen in zip(equivalents, check.seen, strict=False):
             if known.proven and seen.note == check.seen[known.proven.note].note:
                 return row
-        rest = [row for row, seen in zip(equivalents, check.seen, strict=False) if not seen.hint and seen.outcome != "held"]
+        rest = [
+            row
+            for row, seen in zip(equivalents, check.seen, strict=False)
+            if not seen.hint and seen.outcome != "held"
+        ]
         return min(rest, key=lambda row: row["rpm_here"]) if rest else None
 
     def _teach(self) -> dict[str, Any] | None:
-        """The one observation that would teach most: its code and the rpm to try here; none when little is left."""
+        """The one observation that would teach most: its code and the rpm to try here, if any."""
         check = self.check
         if check.fixed is not None or not check.has_head:
             return None
@@ -514,7 +552,9 @@ class _Answer:
 
         def share(at: Setting) -> float:
             pressure = water.vapor_pressure(_SEA_LEVEL_WATER)
-            level = suction.head_at_rest(air.STANDARD_PRESSURE, pressure, water.density(_SEA_LEVEL_WATER), at.submergence)
+            level = suction.head_at_rest(
+                air.STANDARD_PRESSURE, pressure, water.density(_SEA_LEVEL_WATER), at.submergence
+            )
             return max(at.head / level, 0.0) ** power if level > 0 else 0.0
 
         centre = share(self.check.centre)
@@ -537,7 +577,9 @@ class _Answer:
         for name, line in self.lines.items():
             out_of_reach = {"capped": True} if line.rpm > self.wide_open else {}
             power = self.power(line.rpm)
-            mark = "D" if name == "holding" and not self.speed and check.fixed is None else "P" if name == "flare" else "M"
+            mark = "P" if name == "flare" else "M"
+            if name == "holding" and not self.speed and check.fixed is None:
+                mark = "D"  # at rest it scales from the note whatever the coefficients
             out[name + "_rpm"] = _value(line.rpm, "rev/min", line.low, line.high, mark, **out_of_reach)
             low, high = power * line.power_low, power * line.power_high
             out[name + "_power"] = _value(power, "W", low, high, mark, **out_of_reach)
@@ -556,11 +598,14 @@ class _Answer:
         here = self.check.inputs["place.water_temperature"]
         cold, hot = max(here - warm, 273.15), here + warm
         boils = [water.boiling_temperature(p) for p in (pressure, pressure - doubt, pressure + doubt)]
+        low_density, high_density = sorted((water.density(cold), water.density(hot)))
         return {
-            "vapor_pressure": _value(at.vapor_pressure, "Pa", water.vapor_pressure(cold), water.vapor_pressure(hot), "V"),
+            "vapor_pressure": _value(
+                at.vapor_pressure, "Pa", water.vapor_pressure(cold), water.vapor_pressure(hot), "V"
+            ),
             "boiling_temperature": _value(boils[0], "K", boils[1], boils[2], "V"),
             "air_pressure": _value(pressure, "Pa", pressure - doubt, pressure + doubt, "V"),
-            "water_density": _value(at.density, "kg/m3", *sorted((water.density(cold), water.density(hot))), "V"),
+            "water_density": _value(at.density, "kg/m3", low_density, high_density, "V"),
         }
 
     def _at_plan(self) -> dict[str, Any]:
@@ -592,7 +637,9 @@ class _Answer:
             "impeller_inlet_speed": band(lambda at, state, rpm: state.inlet_speed, "m/s", "M"),
             "npsh_available": band(lambda at, state, rpm: state.npsh_available, "m", "M"),
             "inlet_static_pressure": band(
-                lambda at, state, rpm: suction.static_pressure(state, at.vapor_pressure, at.density), "Pa", "M"
+                lambda at, state, rpm: suction.static_pressure(state, at.vapor_pressure, at.density),
+                "Pa",
+                "M",
             ),
             "thrust": _value(thrust, "N", *spread(thrust, [*ends, *deducted]), "M"),
             "planned_power": band(lambda at, state, rpm: running * state.power, "W", "P"),
@@ -607,12 +654,13 @@ class _Answer:
         """
         check = self.check
         learned_ends = [*check.learned_ends, (0.0, 0.0, 0.0), (0.0, 0.0, 0.0)]
-        quantiles = [check.limit(check.known_at_plan, share) for share in (LOW, MIDDLE, HIGH)]
-        if quantiles[1] is None or not (check.fixed is not None or check.today):
+        found = [check.limit(check.known_at_plan, share) for share in (LOW, MIDDLE, HIGH)]
+        quantiles = [x for x in found if x is not None]
+        if not quantiles or not (check.fixed is not None or check.today):
             return dict.fromkeys(("npsh_required", "margin", "ratio", "suction_specific_speed"))
 
         def side(get: Callable[[Setting, State, float], float], which: int, limit: int) -> float:
-            """The low (0) or high (1) side of a result, where the limit's low (0) or high (2) quantile makes it."""
+            """The low (0) or high (1) side of a result that the limit's low (0) or high (2) quantile makes."""
             base = get(check.centre, check.state, quantiles[limit])
             middle = get(check.centre, check.state, quantiles[1])
             own = abs(middle - base)
@@ -638,7 +686,11 @@ class _Answer:
         s_low, s_high = math.exp(side(limit, 0, 0)), math.exp(side(limit, 1, 2)) if capped else None
         return {
             "npsh_required": _value(
-                demand if capped else None, "m", side(required, 0, 2) if capped else None, side(required, 1, 0), "M"
+                demand if capped else None,
+                "m",
+                side(required, 0, 2) if capped else None,
+                side(required, 1, 0),
+                "M",
             ),
             "margin": _value(
                 margin(check.centre, check.state, middle) if capped else None,
@@ -654,11 +706,13 @@ class _Answer:
                 None if log_high is None else math.exp(log_high),
                 "M",
             ),
-            "suction_specific_speed": _value(math.exp(middle) if capped else None, "metric", s_low, s_high, "M"),
+            "suction_specific_speed": _value(
+                math.exp(middle) if capped else None, "metric", s_low, s_high, "M"
+            ),
         }
 
     def _ledger(self) -> list[dict[str, Any]]:
-        """An account of head at the plan, in metres, that sums to the margin; at rest of the throttle no push."""
+        """An account of head at the plan, in metres, that sums to the margin."""
         check, at = self.check, self.check.centre
         weight = at.density * GRAVITY
         middle = check.limit(check.known_at_plan, MIDDLE) if check.capped else None
@@ -689,7 +743,11 @@ class _Answer:
             if at.head <= 0:
                 continue
             learned = check.learned_step(at)
-            held = float(suction.rpm_at(at.unit, at.head, at.density, moved["plan"]["boat_speed"], math.exp(x + learned)))
+            held = float(
+                suction.rpm_at(
+                    at.unit, at.head, at.density, moved["plan"]["boat_speed"], math.exp(x + learned)
+                )
+            )
             change = held - rpm
             out.append(
                 {
@@ -727,7 +785,14 @@ def reply(text: str) -> str:
         if ask == "open":
             return _dump({"case": share.decode(request.get("fragment"))})
         if ask == "shown":
-            return _dump({"other": fields.other_unit(request.get("field"), request.get("text"), request.get("unit")), "error": None})
+            return _dump(
+                {
+                    "other": fields.other_unit(
+                        request.get("field"), request.get("text"), request.get("unit")
+                    ),
+                    "error": None,
+                }
+            )
     except BadReading as bad:
         return _dump({"error": {**bad.as_dict(), "text": wording.error_text(bad.as_dict())}})
     return _dump({"error": {"field": "ask", "text": "Ask to check, link, open or shown."}})

@@ -167,6 +167,14 @@ def boiling_rpm(at: Setting, boat_speed: float) -> float:
     return float(max(power / unit.absorption, 0.0) ** (1 / 3))
 
 
+def sumprod(first: Sequence[float], second: Sequence[float]) -> float:
+    """Sum of products."""
+    total = 0.0
+    for a, b in zip(first, second, strict=True):
+        total += a * b
+    return total
+
+
 def reach(steps: Sequence[float | None], own: float, sign: int) -> float:
     """How far a result reaches to one side: the larger step of each input's two ends, in quadrature.
 
@@ -176,15 +184,18 @@ def reach(steps: Sequence[float | None], own: float, sign: int) -> float:
     :returns: the reach, over 0
     Source: propagation of uncertainty by one evaluation at each end [P].
     """
-    total = own * own
-    for first, second in zip(steps[::2], steps[1::2], strict=True):
-        far = max(sign * first if first else 0.0, sign * second if second else 0.0)
+    total, pairs = own * own, iter(steps)
+    for first, second in zip(pairs, pairs, strict=True):
+        one, other = sign * (first or 0.0), sign * (second or 0.0)
+        far = one if one > other else other
         if far > 0:
             total += far * far
     return math.sqrt(total)
 
 
-def spread(centre: float, ends: Iterable[float | None], low: float = 0.0, high: float = 0.0) -> tuple[float, float]:
+def spread(
+    centre: float, ends: Iterable[float | None], low: float = 0.0, high: float = 0.0
+) -> tuple[float, float]:
     """Low and high side of a result from its values at the ends, see :func:`reach`."""
     steps = [None if end is None else end - centre for end in ends]
     return centre - reach(steps, low, -1), centre + reach(steps, high, 1)
@@ -217,7 +228,9 @@ class Reckoning:
         self.rpm = plan_rpm(inputs)
         self.seen, self.xs, self.sigmas, self.flow_per_rpm = self._read(seen)
         self.without_head = [note.note for note in seen if note not in self.seen]
-        self.state = suction.state(self.centre.unit, self.centre.head, self.centre.density, self.rpm, boat_speed)
+        self.state = suction.state(
+            self.centre.unit, self.centre.head, self.centre.density, self.rpm, boat_speed
+        )
         self.asked = asked(self.centre, self.rpm, boat_speed)
         self.ends = []
         for key, span in spans.items():
@@ -244,7 +257,7 @@ class Reckoning:
 
     def _above_boiling(self, note: Seen) -> bool:
         state = seen_state(self.centre, note)
-        return suction.static_pressure(state, note.vapor_pressure, note.density) > note.vapor_pressure
+        return bool(suction.static_pressure(state, note.vapor_pressure, note.density) > note.vapor_pressure)
 
     # What is known, for the state asked about
 
@@ -326,23 +339,22 @@ class Reckoning:
 
     @cached_property
     def learned_ends(self) -> list[tuple[float, float, float] | None]:
-        """By how much each end moves the low, middle and high quantile of ln S, learned again under it."""
-        if self.fixed is not None or self.known_at_plan.belief is None:
-            return [(0.0, 0.0, 0.0)] * len(self.ends)
-        known, belief = self.known_at_plan, self.known_at_plan.belief
-        centre = [belief.quantile(share) for share in (LOW, MIDDLE, HIGH)]
+        """By how much each end moves the low, middle and high quantile of ln S.
+
+        Each note's S is worked out again under each end; the quantiles follow the notes.
+        """
+        known, still = self.known_at_plan, (0.0, 0.0, 0.0)
+        if self.fixed is not None or known.belief is None:
+            return [still] * len(self.ends)
+        low, middle, high = notes.followed(known.bounds, known.belief, (LOW, MIDDLE, HIGH))
         moved: list[tuple[float, float, float] | None] = []
         for end in self.ends:
             xs = [end.xs[b.note] for b in known.bounds]
             steps = [x - b.x for x, b in zip(xs, known.bounds, strict=True) if x is not None]
             if len(steps) < len(xs):
                 moved.append(None)
-            elif max(steps) - min(steps) < EQUAL:  # all moved alike: so does the belief
-                moved.append((steps[0], steps[0], steps[0]))
-            else:
-                again = notes.learn(b._replace(x=b.x + step) for b, step in zip(known.bounds, steps, strict=True))
-                low, middle, high = (again.quantile(share) for share in (LOW, MIDDLE, HIGH))
-                moved.append((low - centre[0], middle - centre[1], high - centre[2]))
+                continue
+            moved.append((sumprod(low, steps), sumprod(middle, steps), sumprod(high, steps)))
         return moved
 
     def learned_step(self, at: Setting) -> float:
@@ -367,7 +379,8 @@ class Reckoning:
         at, moved = self.centre, [(end.setting, end.plan_rpm) for end in self.ends]
         moved += [(at, self.rpm * (1 - RPM_SCATTER)), (at, self.rpm * (1 + RPM_SCATTER))]
         return [
-            Moved(at, suction.state(at.unit, at.head, at.density, rpm, self.boat_speed), rpm) for at, rpm in moved
+            Moved(at, suction.state(at.unit, at.head, at.density, rpm, self.boat_speed), rpm)
+            for at, rpm in moved
         ]
 
     @cached_property
@@ -466,7 +479,6 @@ class Reckoning:
     def has_head(self) -> bool:
         return self.centre.head > 0
 
-
     def holding(self, boat_speed: float, start: float | None = None, passes: int = 12) -> Holding | None:
         """The most rpm that is a go at a boat speed; none where nothing is known to hold.
 
@@ -556,8 +568,8 @@ class Reckoning:
 
         :param x: ln S on the line
         :param own: step of x down and up by what was learned, over 0
-        :param follows: the quantiles of S (0 low, 1 middle, 2 high) that the low and the high side move with, or
-            the note that the whole line follows
+        :param follows: the quantiles of S (0 low, 1 middle, 2 high) that the low and the high side move
+            with, or the note that the whole line follows
         :param rpm: engine rpm on the line
         :param steps: by how much each end moves the ln S asked there
         """
@@ -567,7 +579,11 @@ class Reckoning:
             theirs = [None if (there := end.xs[follows]) is None else there - here for end in self.ends]
             learned = (theirs, theirs)
         else:
-            learned = tuple([None if q is None else q[side] for q in self.learned_ends] for side in follows)
+            first, second = follows
+            learned = (
+                [None if q is None else q[first] for q in self.learned_ends],
+                [None if q is None else q[second] for q in self.learned_ends],
+            )
         sides = []
         for sign, far, moves in ((-1, own[0], learned[0]), (1, own[1], learned[1])):
             rpm_ends = [

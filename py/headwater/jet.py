@@ -8,7 +8,7 @@ import math
 from typing import Any, NamedTuple
 
 GRAVITY = 9.80665  # m/s2, standard
-_NEWTON_STEPS = 6  # from above on a convex cubic: full float precision for any power and speed
+_NEWTON_STEPS = 4  # from just above the root of a convex cubic: full float precision for any power and speed
 
 
 class Unit(NamedTuple):
@@ -97,14 +97,25 @@ def jet_speed(unit: Unit, power: Any, boat_speed: Any, density: Any) -> Any:
     :param boat_speed: V_0 through the water [m/s]
     :param density: of the water [kg/m3]
     :returns: [m/s]
-    Source: power balance rho g Q H = eta P of one unit, a cubic [D]; its root by Newton's method.
+    Source: power balance rho g Q H = eta P of one unit [D].
     """
-    a, r = unit.outlet_factor, ram(unit, boat_speed)
-    q = 2 * unit.efficiency * power / (density * unit.nozzle_area)
-    x = (q / a) ** (1 / 3) + (r / a) ** 0.5  # never below the root
+    drive = 2 * unit.efficiency * power / (density * unit.nozzle_area)
+    return balance(unit.outlet_factor, ram(unit, boat_speed), drive)
+
+
+def balance(outlet_factor: Any, ram: Any, drive: Any) -> Any:
+    """The jet speed at which a V_j^3 - r V_j = q: what the jet takes is what the engine gives.
+
+    :param outlet_factor: a = 1 + psi + K_b (A_n/A_1)^2 [-]
+    :param ram: r, see :func:`ram` [m2/s2]
+    :param drive: q = 2 eta P/(rho A_n), over 0 [m3/s3]
+    :returns: [m/s]
+    Source: power balance of one unit, a cubic [D]; its root by Newton's method in a fixed number of steps.
+    """
+    x = ((drive / outlet_factor) ** (2 / 3) + ram / outlet_factor) ** 0.5  # never below the root
     for _ in range(_NEWTON_STEPS):
-        xx = a * x * x
-        x = (2 * xx * x + q) / (3 * xx - r)
+        xx = outlet_factor * x * x
+        x = (2 * xx * x + drive) / (3 * xx - ram)
     return x
 
 

@@ -5,8 +5,8 @@ revs ran up, it did not let go) bounds the limit from below and the flare line f
 """
 
 import math
-from math import erfc, exp
 from collections.abc import Iterable, Sequence
+from math import erfc, exp
 from typing import NamedTuple
 
 from headwater.suction import S_FROM_DIMENSIONLESS
@@ -19,7 +19,9 @@ FLARE_RATIO = 1.25  # NPSH ratio of the flare line while none has been seen [P]
 FLARE_EASE = 0.90  # of the lowest flared rpm, where nothing has held yet [P]
 DISAGREE_SIGMAS = 1.96  # joint spreads by which notes must cross to contradict each other
 _ROOT_HALF = math.sqrt(0.5)
-_WINDOW = 4.5  # sigmas beyond which a bound is taken as certain
+_ROOT_TWO_PI = math.sqrt(2 * math.pi)
+_CELLS_A_SIGMA = 3  # to which a blur is resolved
+_WINDOW = 4.0  # sigmas beyond which a bound is taken as certain
 
 
 class Bound(NamedTuple):
@@ -57,7 +59,7 @@ class Belief:
         return self._chance_and_density(x, sigma)[0]
 
     def x_at_chance(self, chance: float, sigma: float) -> float:
-        """The x with this chance under it; :meth:`chance_under` solved by Newton's method in its logarithm."""
+        """The x with this chance under it: :meth:`chance_under` solved by Newton's method."""
         x = self.quantile(chance)
         for _ in range(8):
             under, density = self._chance_and_density(x, sigma)
@@ -68,15 +70,22 @@ class Belief:
         return x
 
     def _chance_and_density(self, x: float, sigma: float) -> tuple[float, float]:
-        first = min(max(int((x - _WINDOW * sigma - self.start) / self.step) + 1, 0), len(self.weights))
-        last = int((x + _WINDOW * sigma - self.start) / self.step) + 1
-        z, step = (x - self.start - first * self.step) / sigma, self.step / sigma
-        under, density = 0.0, 1e-300
-        for weight in self.weights[first:last] if last > first else ():
+        stride = max(
+            int(sigma / self.step / _CELLS_A_SIGMA), 1
+        )  # cells taken together where x is blurred wide
+        last = len(self.weights)
+        k = min(max(int((x - _WINDOW * sigma - self.start) / self.step) + 1, 0), last)
+        end = min(int((x + _WINDOW * sigma - self.start) / self.step) + 1, last)
+        z = (x - self.start - (k + 0.5 * (stride - 1)) * self.step) / sigma
+        under, density, done = 2 * self.below[k], 1e-300, self.below[k]
+        while k < end:
+            k += stride
+            reached = self.below[k if k < last else last]
+            weight, done = reached - done, reached
             under += weight * erfc(-z * _ROOT_HALF)
             density += weight * exp(-0.5 * z * z)
-            z -= step
-        return max(self.below[first] + 0.5 * under, 1e-300), density / (sigma * math.sqrt(2 * math.pi))
+            z -= stride * self.step / sigma
+        return max(0.5 * under, 1e-300), density / (sigma * _ROOT_TWO_PI)
 
 
 def learn(bounds: Iterable[Bound]) -> Belief:
@@ -107,6 +116,23 @@ def learn(bounds: Iterable[Bound]) -> Belief:
         for k in range(max(low, first), min(high, last) + 1):
             weights[k - first] *= 0.5 * erfc(-(offset + k * step) * scale)
     return Belief(PRIOR_LOW + first * step, step, [weight + 1e-300 for weight in weights])
+
+
+def followed(bounds: Sequence[Bound], belief: Belief, shares: Sequence[float]) -> list[list[float]]:
+    """How far each quantile of the belief follows each bound, d quantile / d x, by learning with it moved.
+
+    :param belief: learned from these bounds
+    :param shares: of the quantiles
+    :returns: for each quantile one number a bound
+    """
+    before = [belief.quantile(share) for share in shares]
+    rows: list[list[float]] = [[] for _ in shares]
+    for i, bound in enumerate(bounds):
+        move = bound.sigma / 2
+        moved = learn([*bounds[:i], bound._replace(x=bound.x + move), *bounds[i + 1 :]])
+        for row, share, quantile in zip(rows, shares, before, strict=True):
+            row.append((moved.quantile(share) - quantile) / move)
+    return rows
 
 
 def lowest_above(bounds: Iterable[Bound]) -> Bound | None:

@@ -4,7 +4,6 @@ NPSH is net positive suction head, all heads in metres of water. S is the suctio
 units: impeller rev/min, m3/s and m. Everything is of one unit and works on a float or a numpy array alike.
 """
 
-import math
 from typing import Any, NamedTuple
 
 from headwater import jet
@@ -12,7 +11,7 @@ from headwater.jet import GRAVITY, Unit
 
 S_FROM_US = 0.01936287  # metric S over US S (rev/min, US gal/min, ft), from the units' definitions [V]
 S_FROM_DIMENSIONLESS = 52.919  # metric S over omega sqrt(Q)/(g NPSH)^0.75 [V]
-_STEPS = 7  # of the solution for rpm at a speed; at rest the first is exact
+_STEPS = 5  # of the solution for rpm at a speed; at rest the first is exact
 
 
 class State(NamedTuple):
@@ -59,10 +58,11 @@ def state(unit: Unit, head: Any, density: Any, rpm: Any, boat_speed: Any) -> Sta
     Source: NPSH as total head, so V_1^2/2g is not subtracted [D].
     """
     power = unit.absorption * rpm**3
-    v_j = jet.jet_speed(unit, power, boat_speed, density)
+    ram = jet.ram(unit, boat_speed)
+    v_j = jet.balance(unit.outlet_factor, ram, 2 * unit.efficiency * power / (density * unit.nozzle_area))
     flow = unit.nozzle_area * v_j
     v_1 = flow / unit.inlet_area
-    available = head + jet.ram(unit, boat_speed) / (2 * GRAVITY) - inlet_loss(unit, v_1)
+    available = head + (ram - unit.intake_loss * v_1 * v_1) / (2 * GRAVITY)
     demand = (rpm / unit.gear_ratio) ** (4 / 3) * flow ** (2 / 3)
     return State(power, v_j, flow, v_1, available, demand)
 
@@ -114,7 +114,7 @@ def rpm_at(unit: Unit, head: Any, density: Any, boat_speed: Any, suction_specifi
     asked = (unit.nozzle_area**0.5 / (unit.gear_ratio * suction_specific_speed)) ** (4 / 3)
     x = (cube / a) ** (1 / 3)  # V_j over rpm at rest
     rpm = (offered / (loss * x * x + asked * x ** (2 / 3))) ** 0.5
-    x = x * rpm + (r / a) ** 0.5
+    x = ((x * rpm) ** 2 + r / a) ** 0.5
     for _ in range(_STEPS):
         xx = a * x * x
         x = (2 * xx * x + cube * rpm**3) / (3 * xx - r)

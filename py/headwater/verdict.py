@@ -1,4 +1,4 @@
-"""The verdict of a steady check: go, caution or no-go, the ground it stands on and the code of its headline."""
+"""The verdict of a steady check: go, caution or no-go, the ground it stands on, its headline's code."""
 
 from typing import NamedTuple
 
@@ -64,7 +64,11 @@ def _inside(check: Reckoning) -> Decision:
     """Rules two and three: what she has done, and new ground with its reserve."""
     known, asked = check.known_at_plan, check.asked
     assert asked is not None
-    if check.contradiction and known.lid and check.rpm >= DISAGREE_EASE * check.rpm_at(known.lid.x, check.boat_speed):
+    if (
+        check.contradiction
+        and known.lid
+        and check.rpm >= DISAGREE_EASE * check.rpm_at(known.lid.x, check.boat_speed)
+    ):
         return Decision("caution", "new", "keep_to", ["disagree"])
     why = []
     if check.fixed is None and known.proven and known.belief:

@@ -105,7 +105,9 @@ def _instruction(code: str, facts: Facts, say: _Say) -> str:
     if code == "up_to":
         text = f"{where}: up to {say.holds(holding)}"
         full = facts["full_speed"]
-        return text + (f". Wide open from {say.from_speed(full)}." if full else ". Not wide open at any speed.")
+        return text + (
+            f". Wide open from {say.from_speed(full)}." if full else ". Not wide open at any speed."
+        )
     if code == "teach":
         return "I don't know this pump yet"
     if code == "none_held":
@@ -146,11 +148,11 @@ def _lead(facts: Facts, say: _Say) -> dict[str, Any]:
         share = facts["holding_rpm_share"]
         fewer = round((1 - share) * 100)
         if fewer >= 1:
-            text = f"Any pump holds {fewer} % fewer rpm standing here than at sea level, whatever she holds there."
+            text = f"Standing here any pump holds {fewer} % fewer rpm than at sea level, whatever she holds there."
         elif fewer <= -1:
-            text = f"Any pump holds {-fewer} % more rpm standing here than at sea level, whatever she holds there."
+            text = f"Standing here any pump holds {-fewer} % more rpm than at sea level, whatever she holds there."
         else:
-            text = "Any pump holds as many rpm standing here as at sea level."
+            text = "Standing here any pump holds as many rpm as at sea level."
         values = {"holding_rpm_share": share, "holding_power_share": facts["holding_power_share"]}
         return {"code": "share", "text": text, "values": values}
     there = say.number(note["rpm_there"], "rotation")
@@ -204,8 +206,8 @@ def _teach(teach: Mapping[str, Any], say: _Say) -> str:
     rpm = say.holds(teach["rpm"])
     return {
         "teach_lower": f"Would teach most: hold {rpm} standing and note it.",
-        "teach_upper": f"Would teach most: standing, roll up slowly past {rpm} until the revs run up. Note the rpm.",
-        "teach_again": f"Would teach most: roll up slowly standing to {rpm} in clean water, and note what she does.",
+        "teach_upper": f"Would teach most: standing, roll up slowly past {rpm} until the revs run up.",
+        "teach_again": f"Would teach most: standing, clean water, roll up slowly to {rpm} and note what she does.",
         "teach_repeat": f"Would teach most: hold {rpm} once more and note it.",
         "teach_between": f"Would teach most: standing, roll up slowly to {rpm} and note what she does.",
     }[code]
@@ -228,13 +230,13 @@ def _caution(code: str, facts: Facts, say: _Say) -> str:
         return f"Standing or running? A note without boat speed proves nothing: {which}."
     if code == "measurement_off":
         which = ", ".join(_note(named, say) for named in facts["off"])
-        text = "A measurement is off: what she has done should not be possible. Check nozzle, hub, wear ring and power"
+        text = "A measurement is off: she has done what it rules out. Check nozzle, hub, wear ring and power"
         return f"{text}; see {which}." if which else f"{text}."
     return {
         "older_notes_only": "All notes are of an older pump set-up. They are hints and prove nothing now.",
         "older_notes": "Notes of an older pump set-up count as hints only.",
-        "fixed_disagrees": "A note disagrees with the suction specific speed you fixed. The fixed one is used.",
-        "barometer_at_water": "The barometer must read at the water, not reduced to sea level. Add the altitude to check it.",
+        "fixed_disagrees": "A note disagrees with the S you fixed. The fixed one is used.",
+        "barometer_at_water": "The barometer must show the pressure at the water. Add the altitude to check it.",
         "papers": "Rpm and power are out of papers: the spans are wider.",
     }[code]
 
@@ -283,9 +285,30 @@ _LEDGER = {
 }
 # Title, symbol, formula, value, quantity it is shown in, source.
 _WORKING = (
-    ("Air pressure at the water", "p_atm", "p0 (1 - 0.0065 H/288.15)^5.25588", "air_pressure", "pressure", "ussa1976"),
-    ("Boiling pressure of the water", "p_v", "saturation line, region 4", "vapor_pressure", "pressure", "if97"),
-    ("Boiling temperature under this air", "T_s", "saturation line, region 4", "boiling_temperature", "temperature", "if97"),
+    (
+        "Air pressure at the water",
+        "p_atm",
+        "p0 (1 - 0.0065 H/288.15)^5.25588",
+        "air_pressure",
+        "pressure",
+        "ussa1976",
+    ),
+    (
+        "Boiling pressure of the water",
+        "p_v",
+        "saturation line, region 4",
+        "vapor_pressure",
+        "pressure",
+        "if97",
+    ),
+    (
+        "Boiling temperature under this air",
+        "T_s",
+        "saturation line, region 4",
+        "boiling_temperature",
+        "temperature",
+        "if97",
+    ),
     ("Density of the water", "rho", "rational polynomial in t", "water_density", "density", "kell1975"),
     ("Rpm planned", "N", "as typed", "planned_rpm", "rotation", "affinity"),
     ("Power absorbed", "P", "c N^3", "planned_power", "power", "affinity"),
@@ -301,12 +324,33 @@ _WORKING = (
         "head",
         "npsh",
     ),
-    ("Suction specific speed asked", "S_req", "N sqrt(Q)/NPSHA^0.75", "suction_specific_speed_asked", "plain", "npsh"),
-    ("Suction specific speed of this pump", "S", "learned from the notes", "suction_specific_speed", "plain", "learned"),
+    (
+        "Suction specific speed asked",
+        "S_req",
+        "N sqrt(Q)/NPSHA^0.75",
+        "suction_specific_speed_asked",
+        "plain",
+        "npsh",
+    ),
+    (
+        "Suction specific speed of this pump",
+        "S",
+        "learned from the notes",
+        "suction_specific_speed",
+        "plain",
+        "learned",
+    ),
     ("Head required", "NPSHR", "(N sqrt(Q)/S)^(4/3)", "npsh_required", "head", "npsh"),
     ("Margin", "", "NPSHA - NPSHR", "margin", "head", "npsh"),
     ("Ratio", "", "NPSHA/NPSHR", "ratio", "plain", "npsh"),
-    ("Static pressure ahead of the impeller", "p_1", "rho g (NPSHA - V_1^2/2g) + p_v", "inlet_static_pressure", "pressure", "npsh"),
+    (
+        "Static pressure ahead of the impeller",
+        "p_1",
+        "rho g (NPSHA - V_1^2/2g) + p_v",
+        "inlet_static_pressure",
+        "pressure",
+        "npsh",
+    ),
 )
 _TICKS = (100.0, 250.0, 500.0, 1000.0, 2000.0)  # steps of the gauge board, rpm
 _MOST_TICKS = 9
@@ -413,7 +457,14 @@ def _lines(values: Mapping[str, Any], say: _Say) -> list[dict[str, Any]]:
     full = values["full_speed"]
     if full and full["value"] > 0:
         rows.append(
-            {"key": "wide_open", "first": True, "label": "Wide open from", "value": say.from_speed(full["value"]), "span": "", "aside": ""}
+            {
+                "key": "wide_open",
+                "first": True,
+                "label": "Wide open from",
+                "value": say.from_speed(full["value"]),
+                "span": "",
+                "aside": "",
+            }
         )
     return rows
 
@@ -427,22 +478,34 @@ def _gauge(values: Mapping[str, Any], say: _Say) -> dict[str, Any]:
     step = next((step for step in _TICKS if top / step <= _MOST_TICKS), _TICKS[-1])
     top = math.ceil(top / step) * step
     for key, row in drawn.items():
-        low, high = (None if row[side] is None else min(max(row[side] / top, 0.0), 1.0) for side in ("low", "high"))
+        low, high = (
+            None if row[side] is None else min(max(row[side] / top, 0.0), 1.0) for side in ("low", "high")
+        )
         text = say.number(row["value"], "rotation", "down" if key == "holds" else None)
         marks.append({"key": key, "at": row["value"] / top, "low": low, "high": high, "text": text})
     ticks = [
-        {"at": k * step / top, "text": say.number(k * step, "rotation"), "major": True} for k in range(round(top / step) + 1)
+        {"at": k * step / top, "text": say.number(k * step, "rotation"), "major": True}
+        for k in range(round(top / step) + 1)
     ]
     spoken = {"holds": "holds", "flare": "revs run up", "lets_go": "lets go", "plan": "plan"}
     text = ", ".join(f"{spoken[mark['key']]} {mark['text']} {say.units['rotation']}" for mark in marks)
-    return {"unit": say.units["rotation"], "ticks": ticks, "marks": marks, "text": text[:1].upper() + text[1:] + "."}
+    return {
+        "unit": say.units["rotation"],
+        "ticks": ticks,
+        "marks": marks,
+        "text": text[:1].upper() + text[1:] + ".",
+    }
 
 
 def _ledger_row(row: Mapping[str, Any], say: _Say) -> dict[str, str]:
     total = row["term"] in ("margin", "available")
     sign = "=" if total else "-" if row["value"] < 0 else "+"
     value = row["value"] if total else abs(row["value"])
-    term = "less the shaft over the water" if row["term"] == "depth" and row["value"] < 0 else _LEDGER[row["term"]]
+    term = (
+        "less the shaft over the water"
+        if row["term"] == "depth" and row["value"] < 0
+        else _LEDGER[row["term"]]
+    )
     return {"key": row["term"], "term": term, "value": say.show(value, "head"), "sign": sign}
 
 
