@@ -5,6 +5,7 @@ import hashlib
 import json
 import re
 from pathlib import Path
+from types import SimpleNamespace
 
 import jinja2
 
@@ -72,7 +73,7 @@ def render(out: Path, links: dict[str, str], demo: dict) -> str:
         "fields": {row["key"]: row for row in table},
         "part": lambda name: [row for row in table if row["key"].startswith(name + ".")],
         "links": links,
-        "screen": wording.SCREEN,
+        "screen": SimpleNamespace(**wording.SCREEN),  # a dict's own methods would hide its sentences
         "version": __version__,
         "systems": units.SYSTEMS,
         "lets_go": wording.LETS_GO,
