@@ -660,7 +660,7 @@ class _Answer:
             return dict.fromkeys(("npsh_required", "margin", "ratio", "suction_specific_speed"))
 
         def side(get: Callable[[Setting, State, float], float], which: int, limit: int) -> float:
-            """The low (0) or high (1) side of a result that the limit's low (0) or high (2) quantile makes."""
+            """The low (0) or high (1) side of a result, made by the limit's low (0) or high (2) end."""
             base = get(check.centre, check.state, quantiles[limit])
             middle = get(check.centre, check.state, quantiles[1])
             own = abs(middle - base)

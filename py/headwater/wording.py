@@ -148,9 +148,9 @@ def _lead(facts: Facts, say: _Say) -> dict[str, Any]:
         share = facts["holding_rpm_share"]
         fewer = round((1 - share) * 100)
         if fewer >= 1:
-            text = f"Standing here any pump holds {fewer} % fewer rpm than at sea level, whatever she holds there."
+            text = f"Standing here any pump holds {fewer} % fewer rpm than at sea level, whatever that is."
         elif fewer <= -1:
-            text = f"Standing here any pump holds {-fewer} % more rpm than at sea level, whatever she holds there."
+            text = f"Standing here any pump holds {-fewer} % more rpm than at sea level, whatever that is."
         else:
             text = "Standing here any pump holds as many rpm as at sea level."
         values = {"holding_rpm_share": share, "holding_power_share": facts["holding_power_share"]}
@@ -207,7 +207,7 @@ def _teach(teach: Mapping[str, Any], say: _Say) -> str:
     return {
         "teach_lower": f"Would teach most: hold {rpm} standing and note it.",
         "teach_upper": f"Would teach most: standing, roll up slowly past {rpm} until the revs run up.",
-        "teach_again": f"Would teach most: standing, clean water, roll up slowly to {rpm} and note what she does.",
+        "teach_again": f"Would teach most: standing, clean water, roll up to {rpm} and note what she does.",
         "teach_repeat": f"Would teach most: hold {rpm} once more and note it.",
         "teach_between": f"Would teach most: standing, roll up slowly to {rpm} and note what she does.",
     }[code]
@@ -236,7 +236,7 @@ def _caution(code: str, facts: Facts, say: _Say) -> str:
         "older_notes_only": "All notes are of an older pump set-up. They are hints and prove nothing now.",
         "older_notes": "Notes of an older pump set-up count as hints only.",
         "fixed_disagrees": "A note disagrees with the S you fixed. The fixed one is used.",
-        "barometer_at_water": "The barometer must show the pressure at the water. Add the altitude to check it.",
+        "barometer_at_water": "The barometer must show the pressure at the water. Add the altitude to check.",
         "papers": "Rpm and power are out of papers: the spans are wider.",
     }[code]
 
