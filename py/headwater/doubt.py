@@ -488,20 +488,22 @@ class Reckoning:
         if not self.has_head or (self.fixed is None and not self.today):
             return None
         at, rpm, found = self.centre, start or self.rpm, None
-        judged = math.inf
+        judged, same = math.inf, _SAME_DOUBT
         steps: list[float | None] = []
         for _ in range(passes):
             state = suction.state(at.unit, at.head, at.density, rpm, boat_speed)
             if state.npsh_available <= 0:
                 rpm *= 0.8
                 continue
-            if abs(judged / rpm - 1) > _SAME_DOUBT:
+            if abs(judged / rpm - 1) > same:
                 judged, steps = rpm, self.asked_steps(rpm, boat_speed)
             known = self.known(boat_speed, state.flow / rpm)
             slope = float(suction.rpm_slope(at.unit, state, boat_speed))
             found = self._hold(known, boat_speed, math.log(suction.speed_asked(state)), slope, steps)
-            if found is None or abs(found.rpm / rpm - 1) < EQUAL / 10:
+            if found is None or (abs(found.rpm / rpm - 1) < EQUAL / 10 and same == 0.0):
                 break
+            if abs(found.rpm / rpm - 1) < EQUAL:
+                same = 0.0  # settled: once more with the doubt of this very rpm
             rpm = found.rpm
         return found
 

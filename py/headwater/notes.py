@@ -74,7 +74,7 @@ class Belief:
             int(sigma / self.step / _CELLS_A_SIGMA), 1
         )  # cells taken together where x is blurred wide
         last = len(self.weights)
-        k = min(max(int((x - _WINDOW * sigma - self.start) / self.step) + 1, 0), last)
+        k = min(max(int((x - _WINDOW * sigma - self.start) / self.step) // stride * stride, 0), last)
         end = min(int((x + _WINDOW * sigma - self.start) / self.step) + 1, last)
         z = (x - self.start - (k + 0.5 * (stride - 1)) * self.step) / sigma
         under, density, done = 2 * self.below[k], 1e-300, self.below[k]
@@ -95,13 +95,16 @@ def learn(bounds: Iterable[Bound]) -> Belief:
     """
     bounds = list(bounds)
     top = max([PRIOR_HIGH, *(bound.x + 1 for bound in bounds)])  # e times the largest S_note at the least
-    step = (top - PRIOR_LOW) / (GRID - 1)
+    bottom = min(
+        [PRIOR_LOW, *(bound.x - 1 for bound in bounds if bound.x < PRIOR_LOW)]
+    )  # no note falls outside
+    step = (top - bottom) / (GRID - 1)
     spans = []
     first, last = 0, GRID - 1
     for bound in bounds:
         reach = _WINDOW * bound.sigma
-        low = math.ceil((bound.x - reach - PRIOR_LOW) / step)
-        high = math.floor((bound.x + reach - PRIOR_LOW) / step)
+        low = math.ceil((bound.x - reach - bottom) / step)
+        high = math.floor((bound.x + reach - bottom) / step)
         spans.append((bound, low, high))
         if bound.below:
             first = max(first, min(low, GRID - 1))
@@ -112,10 +115,10 @@ def learn(bounds: Iterable[Bound]) -> Belief:
     weights = [1.0] * (last - first + 1)
     for bound, low, high in spans:
         scale = _ROOT_HALF / (bound.sigma if bound.below else -bound.sigma)
-        offset = PRIOR_LOW - bound.x
+        offset = bottom - bound.x
         for k in range(max(low, first), min(high, last) + 1):
             weights[k - first] *= 0.5 * erfc(-(offset + k * step) * scale)
-    return Belief(PRIOR_LOW + first * step, step, [weight + 1e-300 for weight in weights])
+    return Belief(bottom + first * step, step, [weight + 1e-300 for weight in weights])
 
 
 def followed(bounds: Sequence[Bound], belief: Belief, shares: Sequence[float]) -> list[list[float]]:
