@@ -15,7 +15,8 @@ import build
 ROOT = Path(__file__).resolve().parents[2]
 PYODIDE = ROOT / "pwa" / "node_modules" / "pyodide"
 TWINS = (".br", ".gz")
-NOT_KEPT = ("sw.js", "policy.txt")  # the list itself, and what only servers read
+# The list itself, what only servers read, what only an install dialogue shows.
+NOT_KEPT = ("sw.js", "policy.txt", "screenshots/desk.png", "screenshots/phone.png")
 
 
 def plain(folder: Path) -> list[Path]:
