@@ -45,7 +45,8 @@ def build(out: Path = DIST) -> Path:
     policy = page.render(
         out, {key: str(path.relative_to(out).as_posix()) for key, path in links.items()}, demo
     )
-    shutil.copytree(ROOT / "static" / "licences", out / "licences")
+    for name in ("licences", "screenshots"):
+        shutil.copytree(ROOT / "static" / name, out / name)
     bundle.service_worker(PWA / "sw" / "sw.js", out, pack.precache(out))
     (out / "policy.txt").write_text(policy + "\n")
     pack.compress(out)

@@ -71,7 +71,7 @@ def prepare(extras: str) -> None:
         subprocess.run([*pip, "-c", str(pins), "-e", f"{ROOT}[{extras}]"], check=True)
         stamp.write_text(wanted)
     stamp, wanted, done = _stamped("npm", PWA / "package-lock.json", PWA / "package.json")
-    if not (done and (PWA / "node_modules").is_dir()):
+    if not (done and (PWA / "node_modules" / ".package-lock.json").exists()):
         say("npm packages into pwa/node_modules")
         subprocess.run([shutil.which("npm") or "npm", "ci", "--no-fund", "--no-audit"], cwd=PWA, check=True)
         stamp.write_text(wanted)

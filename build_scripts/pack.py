@@ -12,6 +12,9 @@ from machine import CACHE
 _COMPRESSED = (".html", ".js", ".mjs", ".css", ".json", ".webmanifest", ".wasm", ".zip", ".svg", ".txt")
 
 
+_NOT_SHELL = ("runtime/", "screenshots/")  # the one is kept apart, the other is for the install dialogue
+
+
 def _hash(file: Path) -> str:
     return hashlib.sha256(file.read_bytes()).hexdigest()
 
@@ -21,7 +24,7 @@ def precache(out: Path) -> dict:
     files = {
         path.relative_to(out).as_posix(): _hash(path) for path in sorted(out.rglob("*")) if path.is_file()
     }
-    shell = [[name, digest] for name, digest in files.items() if not name.startswith("runtime/")]
+    shell = [[name, digest] for name, digest in files.items() if not name.startswith(_NOT_SHELL)]
     runtime = [[name, digest] for name, digest in files.items() if name.startswith("runtime/")]
     build = hashlib.sha256("".join(digest for _, digest in shell).encode()).hexdigest()[:10]
     return {

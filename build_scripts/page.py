@@ -111,4 +111,13 @@ def _manifest(screen: dict[str, str]) -> dict:
         "background_color": "#ffffff",
         "theme_color": "#111111",
         "icons": [*icons, maskable],
+        "screenshots": [
+            {
+                "src": "screenshots/phone.png",
+                "sizes": "390x844",
+                "type": "image/png",
+                "form_factor": "narrow",
+            },
+            {"src": "screenshots/desk.png", "sizes": "1280x800", "type": "image/png", "form_factor": "wide"},
+        ],
     }
