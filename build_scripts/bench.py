@@ -1,10 +1,9 @@
-"""Measures what the project promises and prints it beside its targets. Timings want a quiet machine."""
+"""Measures what the project promises and prints it beside its targets; timings want a quiet machine."""
 
 from __future__ import annotations
 
 import argparse
 import contextlib
-import io
 import json
 import os
 import shutil
@@ -23,29 +22,34 @@ import machine
 from machine import PWA, ROOT
 
 if TYPE_CHECKING:
-    from playwright.sync_api import BrowserContext, Playwright
+    from playwright.sync_api import BrowserContext
 
 STOCK = Path(__file__).with_name("bench_stock")
-OPTIONS = ["--no-sandbox", "--disable-gpu", "--disable-background-networking", "--disable-component-update"]
 CALLS = 200  # answers timed, each with one reading changed
-STARTS = 7  # cold offline starts of each app
-PHONE = {"width": 390, "height": 844}
+IMPORTS = 11  # fresh processes that import the core
+OPTIONS = ["--no-sandbox", "--disable-gpu", "--disable-background-networking", "--disable-component-update"]
 
-# Told to a page before its own scripts run: when the gauge first stands, in ms from navigation.
+# Told to a page before its own scripts run: when an answer first stands in the gauge, in ms from navigation.
 WATCH_APP = """
 new MutationObserver((_, watcher) => {
-  const state = document.getElementById("answer")?.dataset.state;
-  if (!["go", "caution", "no-go"].includes(state)) return;
+  if (!["go", "caution", "no-go"].includes(document.getElementById("answer")?.dataset.state)) return;
   window.answeredAt = performance.now();
   watcher.disconnect();
 }).observe(document, { subtree: true, attributes: true, attributeFilter: ["data-state"] });
 """
-PAINTED = "performance.getEntriesByName('first-contentful-paint')[0]?.startTime ?? null"
-IN_WORKER = """async ({ worker, runtime, core, cases }) => {
+READY = """async () => {
+  const worker = (await navigator.serviceWorker.ready).active;
+  if (!navigator.serviceWorker.controller || !window.answeredAt) return false;
+  return worker.state === "activated";
+}"""
+TIMES = """() => window.answeredAt && [
+  window.answeredAt, performance.getEntriesByName("first-contentful-paint")[0].startTime
+]"""
+ASK_WORKER = """async ({ worker, runtime, core, cases }) => {
   const python = new Worker(worker, { type: "module" });
   const heard = (kind) => new Promise((done, failed) => {
     python.onmessage = ({ data }) => {
-      if (data.kind === kind) done(data.text);
+      if (data.kind === kind) done();
       else if (data.kind !== "progress") failed(new Error(data.message));
     };
   });
@@ -55,8 +59,8 @@ IN_WORKER = """async ({ worker, runtime, core, cases }) => {
   const times = [];
   for (const [id, item] of cases.entries()) {
     const text = JSON.stringify({ ask: "check", case: item, units: null });
-    const started = performance.now();
     const answer = heard("answer");
+    const started = performance.now();
     python.postMessage({ kind: "ask", id, text });
     await answer;
     times.push(performance.now() - started);
@@ -75,62 +79,171 @@ class Row(NamedTuple):
     unit: str
 
 
-def demo_cases(count: int = CALLS) -> list[dict]:
-    """The demo with its two notes, the water a little warmer in each, so that nothing can be remembered."""
+def demo_cases() -> list[dict]:
+    """The demo with its two notes, the water a little warmer each time, so that nothing can be remembered."""
     demo = json.loads((ROOT / "static" / "demo.json").read_text())["case"]
-    step = 20 / count
-    return [
-        {**demo, "place": {**demo["place"], "water_temperature": f"{50 + step * index:.3f} F"}}
-        for index in range(count)
-    ]
+    readings = [f"{50 + 20 * index / CALLS:.3f} F" for index in range(CALLS)]
+    return [{**demo, "place": {**demo["place"], "water_temperature": reading}} for reading in readings]
 
 
-def native() -> list[Row]:
+def native() -> Iterator[Row]:
     """The answer under this Python, and how long the core takes to import."""
     from headwater.answer import answer
 
     times = []
     for case in demo_cases():
         started = time.perf_counter()
-        assert answer(case)["verdict"]
+        answer(case)
         times.append(time.perf_counter() - started)
-    return [
-        Row("answer, native, median", 4, 1000 * statistics.median(times), "ms"),
-        Row("import headwater.answer", 40, 1000 * statistics.median(import_times()), "ms"),
-    ]
+    yield Row("answer, native, median", 4, 1000 * statistics.median(times), "ms")
+    yield Row("import of the core, median", 40, 1000 * statistics.median(import_times()), "ms")
 
 
-def import_times(count: int = 11) -> list[float]:
-    """Seconds to import the core in fresh processes, its compiled files in place."""
-    code = (
-        "import time; started = time.perf_counter(); import headwater.answer; print(time.perf_counter() - started)"
-    )
+def import_times() -> list[float]:
+    """Seconds to import the whole core in fresh processes, with its compiled files in place."""
+    code = "import time; t = time.perf_counter(); import headwater.answer; print(time.perf_counter() - t)"
     environment = {key: value for key, value in os.environ.items() if key != "PYTHONDONTWRITEBYTECODE"}
     with tempfile.TemporaryDirectory() as folder:
         environment["PYTHONPYCACHEPREFIX"] = folder
-        command = [sys.executable, "-c", code]
-        runs = [subprocess.run(command, env=environment, capture_output=True, text=True, check=True)] * 0
-        for _ in range(count + 1):
-            runs.append(subprocess.run(command, env=environment, capture_output=True, text=True, check=True))
-    return [float(run.stdout) for run in runs[1:]]  # the first one compiles
+
+        def once() -> float:
+            command = [sys.executable, "-c", code]
+            done = subprocess.run(command, env=environment, capture_output=True, text=True, check=True)
+            return float(done.stdout)
+
+        once()  # compiles
+        return [once() for _ in range(IMPORTS)]
 
 
-def sizes(dist: Path) -> list[Row]:
+def sizes(dist: Path) -> Iterator[Row]:
     """What a first visit brings, the shell without Python, and the wheel."""
     import bake
+    import pack
 
-    kept = [dist / name for name, _ in json.loads((machine.CACHE / "kept.json").read_text())]
-    return []
+    weights = pack.weights(dist)
+    yield Row("first visit, brotli", 4200, weights["first visit"] / 1000, "kB")
+    yield Row("shell without Python, brotli", 90, weights["shell"] / 1000, "kB")
+    with tempfile.TemporaryDirectory() as folder:
+        yield Row("wheel", 80, bake.wheel(Path(folder)).stat().st_size / 1000, "kB")
+
+
+def stock_site(dist: Path, out: Path) -> None:
+    """The plainest app around the same core: stock Pyodide, the core unpacked from a zip of .py files."""
+    shutil.copytree(STOCK, out)
+    shutil.copytree(PWA / "node_modules" / "pyodide", out / "runtime")
+    shutil.copy(ROOT / "static" / "demo.json", out)
+    shutil.copy(dist / "policy.txt", out)
+    with zipfile.ZipFile(out / "core.zip", "w", zipfile.ZIP_DEFLATED) as archive:
+        for file in sorted((ROOT / "py" / "headwater").rglob("*.py")):
+            archive.write(file, file.relative_to(ROOT / "py"))
 
 
 @contextlib.contextmanager
-def served(folder: Path) -> Iterator[tuple[str, subprocess.Popen[str]]]:
-    """A folder under a server of its own, dead at the latest when this is left."""
+def served(folder: Path) -> Iterator[str]:
+    """A folder under a server process of its own, which is dead when this is left."""
     command = [sys.executable, str(Path(__file__).with_name("server.py")), str(folder)]
     server = subprocess.Popen(command, stdout=subprocess.PIPE, text=True)
     assert server.stdout is not None
     try:
-        yield f"http://localhost:{server.stdout.readline().strip()}/", server
+        yield f"http://localhost:{server.stdout.readline().strip()}/"
     finally:
         server.kill()
         server.wait()
+
+
+class Chromium:
+    """A fresh browser process on a kept profile, each time it is opened."""
+
+    def __init__(self, playwright: Any, profile: Path) -> None:
+        self._launch, self._profile = playwright.chromium.launch_persistent_context, profile
+        self._path = machine.browsers()["chromium"]
+
+    @contextlib.contextmanager
+    def open(self) -> Iterator[BrowserContext]:
+        phone = {"width": 390, "height": 844}
+        context = self._launch(self._profile, executable_path=self._path, args=OPTIONS, viewport=phone)
+        context.add_init_script(WATCH_APP)
+        try:
+            yield context
+        finally:
+            context.close()
+
+    def keep(self, url: str) -> None:
+        """First visit, until an answer stands and everything is kept."""
+        with self.open() as context:
+            page = context.pages[0]
+            page.goto(url)
+            while not page.evaluate(READY):
+                page.wait_for_timeout(100)
+            page.wait_for_timeout(1000)  # what is typed is written down shortly after
+
+    def start(self, url: str) -> tuple[float, float]:
+        """One start: ms from navigation to the answer, and to the first paint."""
+        with self.open() as context:
+            page = context.pages[0]
+            page.goto(url)
+            while not (times := page.evaluate(TIMES)):
+                page.wait_for_timeout(20)
+            return times
+
+
+def in_browser(dist: Path, starts: int) -> Iterator[Row]:
+    """The answer in the worker, and cold offline starts of the app and of a stock one, by turns."""
+    from playwright.sync_api import sync_playwright
+
+    with tempfile.TemporaryDirectory() as folder, sync_playwright() as playwright:
+        work = Path(folder)
+        stock_site(dist, work / "stock")
+        app, stock = (Chromium(playwright, work / f"profile-{name}") for name in ("app", "stock"))
+        with served(dist) as app_url:
+            yield Row(
+                "check in the worker, median", 10, statistics.median(in_worker(app, app_url, dist)), "ms"
+            )
+            app.keep(f"{app_url}#demo")
+        with served(work / "stock") as stock_url:
+            stock.keep(stock_url)
+        app_times, stock_times = [], []  # both servers are dead by now
+        for _ in range(starts):
+            app_times.append(app.start(app_url))
+            stock_times.append(stock.start(stock_url))
+    answered, painted = (statistics.median(column) for column in zip(*app_times, strict=True))
+    whole = statistics.median(row[0] for row in stock_times)
+    print(f"offline start: app {answered:.0f} ms, painted {painted:.0f} ms; stock {whole:.0f} ms")
+    yield Row("offline start / stock start", 0.5, answered / whole, "")
+    yield Row("page painted / stock start", 0.15, painted / whole, "")
+
+
+def in_worker(browser: Chromium, url: str, dist: Path) -> list[float]:
+    """Ms from a question to the app's own worker until its reply: answer, sentences, JSON, messages."""
+    (worker,), (core,), (runtime,) = (
+        dist.glob(p) for p in ("app/worker-*.js", "app/core-*.zip", "runtime/*")
+    )
+    with browser.open() as context:
+        page = context.pages[0]
+        page.goto(f"{url}licences/index.txt")  # a page of the same origin that starts nothing by itself
+        places = {
+            "worker": f"{url}app/{worker.name}",
+            "core": f"{url}app/{core.name}",
+            "runtime": f"{url}runtime/{runtime.name}/",
+        }
+        return page.evaluate(ASK_WORKER, {**places, "cases": demo_cases()})
+
+
+def main() -> None:
+    parser = argparse.ArgumentParser(description=__doc__)
+    parser.add_argument("--starts", type=int, default=9, help="cold offline starts of each app")
+    options = parser.parse_args()
+    machine.prepare("build,dev")
+    machine.in_venv(__file__)
+    import build
+
+    dist = build.build()
+    rows = [*native(), *sizes(dist), *in_browser(dist, options.starts)]
+    print(f"\n{'':<32}{'target':>10}{'measured':>12}")
+    for name, target, measured, unit in rows:
+        verdict = "" if measured <= target else "  over"
+        print(f"{name:<32}{target:>10g}{measured:>12.3g} {unit}{verdict}".rstrip())
+
+
+if __name__ == "__main__":
+    main()

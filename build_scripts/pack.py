@@ -11,21 +11,26 @@ from machine import CACHE
 
 _COMPRESSED = (".html", ".js", ".mjs", ".css", ".json", ".webmanifest", ".wasm", ".zip", ".svg", ".txt")
 
-
-_NOT_SHELL = ("runtime/", "screenshots/")  # the one is kept apart, the other is for the install dialogue
+_TWINS = (".br", ".gz")
+# The list itself, what only a server reads, and pictures for the install dialogue.
+_NOT_KEPT = ("sw.js", "policy.txt", "screenshots/")
 
 
 def _hash(file: Path) -> str:
     return hashlib.sha256(file.read_bytes()).hexdigest()
 
 
+def kept(out: Path) -> list[str]:
+    """Names of the files that the phone keeps, out of a built folder."""
+    names = [path.relative_to(out).as_posix() for path in sorted(out.rglob("*")) if path.is_file()]
+    return [name for name in names if not name.startswith(_NOT_KEPT) and not name.endswith(_TWINS)]
+
+
 def precache(out: Path) -> dict:
     """What the service worker keeps: each file's path and SHA-256, the runtime's apart from the shell's."""
-    files = {
-        path.relative_to(out).as_posix(): _hash(path) for path in sorted(out.rglob("*")) if path.is_file()
-    }
-    shell = [[name, digest] for name, digest in files.items() if not name.startswith(_NOT_SHELL)]
-    runtime = [[name, digest] for name, digest in files.items() if name.startswith("runtime/")]
+    files = [[name, _hash(out / name)] for name in kept(out)]
+    shell = [row for row in files if not row[0].startswith("runtime/")]
+    runtime = [row for row in files if row[0].startswith("runtime/")]
     build = hashlib.sha256("".join(digest for _, digest in shell).encode()).hexdigest()[:10]
     return {
         "SHELL_FILES": shell,
@@ -35,6 +40,18 @@ def precache(out: Path) -> dict:
     }
 
 
+def weights(out: Path) -> dict[str, int]:
+    """Bytes that a browser receives: on a first visit, and of these all but Python."""
+
+    def sent(name: str) -> int:
+        packed = out / (name + ".br")
+        return (packed if packed.exists() else out / name).stat().st_size
+
+    first = {name: sent(name) for name in [*kept(out), "sw.js"]}
+    shell = [size for name, size in first.items() if not name.startswith(("runtime/", "app/core-"))]
+    return {"first visit": sum(first.values()), "shell": sum(shell)}
+
+
 def compress(out: Path) -> None:
     """A brotli 11 and a gzip 9 twin beside each file; kept by content, for brotli takes its time."""
     kept = CACHE / "packed"
@@ -42,7 +59,7 @@ def compress(out: Path) -> None:
     for file in sorted(out.rglob("*")):
         if not file.is_file() or file.suffix not in _COMPRESSED:
             continue
-        for ending in (".br", ".gz"):
+        for ending in _TWINS:
             done = kept / (_hash(file) + ending)
             if not done.exists():
                 content = file.read_bytes()

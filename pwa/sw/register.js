@@ -13,6 +13,8 @@
  * @typedef {{onState: (state: State) => void, onWaiting: (take: () => void) => void}} Hooks
  */
 
+const LATER_MS = 5000; // for a start that asks nothing
+
 /** @param {Hooks} hooks */
 export function register(hooks) {
   const container = navigator.serviceWorker;
@@ -22,6 +24,8 @@ export function register(hooks) {
   }
   const known = container.controller !== null; // else this is the first install, and nothing is reloaded
   let taking = false;
+  /** @type {ReturnType<typeof setTimeout> | undefined} */
+  let later;
   container.addEventListener("controllerchange", () => {
     if (known && taking) location.reload();
     else report();
@@ -42,7 +46,8 @@ export function register(hooks) {
     } catch {
       if (!container.controller) hooks.onState({ fault: "install" });
     }
-    report();
+    // To read every file takes time that the first answer needs: it comes before, or after a while without one.
+    later = setTimeout(report, known ? LATER_MS : 0);
   }
 
   /** @param {ServiceWorker | null} worker */
@@ -74,6 +79,7 @@ export function register(hooks) {
 
   /** Say what is kept; what an idle phone has thrown out is fetched again without being asked. */
   async function report() {
+    clearTimeout(later);
     let state = await ask("state");
     if (state?.bad?.length && navigator.onLine) state = await ask("repair");
     if (state) hooks.onState(state);
@@ -84,7 +90,7 @@ export function register(hooks) {
   return {
     /** This build has painted an answer. */
     ran() {
-      ask("ran");
+      ask("ran").then(report);
     },
     /** Fetch again what is missing. */
     async repair() {

@@ -43,8 +43,8 @@ async function install() {
 
 /** A first visit is served from here at once; of our shells this build's and the one before it stay. */
 async function activate() {
-  const others = (await caches.keys()).filter((name) => name.startsWith(SHELLS) && name !== SHELL);
-  await Promise.all(others.slice(0, -1).map((name) => caches.delete(name)));
+  const shells = (await others()).filter((name) => name.startsWith(SHELLS));
+  await Promise.all(shells.slice(1).map((name) => caches.delete(name)));
   await sw.clients.claim();
 }
 
@@ -57,11 +57,20 @@ async function serve(request) {
 
 /** A file from this build's caches, else from the build before it, whose page may still be open. @param {string} url */
 async function find(url) {
-  const ours = (await caches.keys()).filter((name) => name.startsWith(OURS));
-  for (const name of new Set([SHELL, RUNTIME_CACHE, ...ours.reverse()])) {
-    const kept = ours.includes(name) && (await (await caches.open(name)).match(url));
+  for (const name of [SHELL, RUNTIME_CACHE]) {
+    const kept = await (await caches.open(name)).match(url);
     if (kept) return kept;
   }
+  for (const name of await others()) {
+    const kept = await (await caches.open(name)).match(url);
+    if (kept) return kept;
+  }
+}
+
+/** Caches of other builds of this copy, the newest first. */
+async function others() {
+  const names = await caches.keys();
+  return names.filter((name) => name.startsWith(OURS) && name !== SHELL && name !== RUNTIME_CACHE).reverse();
 }
 
 /** Whether every file is here and whole. */
@@ -86,8 +95,7 @@ async function repair() {
 
 /** This build has run once: what came before may go. */
 async function ran() {
-  const ours = (await caches.keys()).filter((name) => name.startsWith(OURS));
-  await Promise.all(ours.filter((name) => name !== SHELL && name !== RUNTIME_CACHE).map((name) => caches.delete(name)));
+  await Promise.all((await others()).map((name) => caches.delete(name)));
 }
 
 /** The person wants this version now. */
