@@ -314,15 +314,15 @@ class _Answer:
 
     # Lines and curve
 
-    def _held_line(self, held: Holding, speed: float, bounds: list[Bound]) -> Line:
+    def _held_line(self, held: Holding, speed: float, bounds: list[Bound], exact: bool) -> Line:
         """The line that holds, with the band of what sets it."""
-        check = self.check
+        check, steps = self.check, None if exact else held.steps
         if check.fixed is not None:
-            return check.line(held.x, speed, held.kind, (0.0, 0.0), (0, 0), held.rpm, held.steps)
+            return check.line(held.x, speed, held.kind, (0.0, 0.0), (0, 0), held.rpm, steps)
         near = min((b for b in bounds if not b.hint), key=lambda b: abs(b.x - held.x))
         own = SIGMAS * near.sigma
         follows = near.note if held.kind in ("proven", "let_go", "disagree") else (0, 0)
-        return check.line(held.x, speed, held.kind, (own, own), follows, held.rpm, held.steps)
+        return check.line(held.x, speed, held.kind, (own, own), follows, held.rpm, steps)
 
     def _lines_at(self, speed: float, held: Holding | None, exact: bool) -> dict[str, Line]:
         """The lines that can be drawn at a boat speed: holding, let_go, flare.
@@ -338,12 +338,11 @@ class _Answer:
         shared = None if exact else held.steps if held else check.asked_steps(rpm, speed)
 
         def line(x: float, kind: str, own: tuple[float, float]) -> Line:
-            rpm = check.rpm_at(x, speed)
-            return check.line(x, speed, kind, own, (0, 2), rpm, shared or check.asked_steps(rpm, speed))
+            return check.line(x, speed, kind, own, (0, 2), check.rpm_at(x, speed), shared)
 
         lines = {}
         if held:
-            lines["holding"] = self._held_line(held, speed, known.bounds)
+            lines["holding"] = self._held_line(held, speed, known.bounds, exact)
         if check.capped:
             low, middle, high = (check.limit(known, share) for share in (LOW, MIDDLE, HIGH))
             if low is not None and middle is not None and high is not None:
@@ -421,8 +420,7 @@ class _Answer:
             state = suction.state(at.unit, at.head, at.density, rpm, self.speed)
             bound = next(b for b in check.bounds(self.speed, state.flow / rpm) if b.note == i)
             own = SIGMAS * bound.sigma
-            steps = check.asked_steps(rpm, self.speed)
-            line = check.line(bound.x, self.speed, seen.outcome, (own, own), i, rpm, steps)
+            line = check.line(bound.x, self.speed, seen.outcome, (own, own), i, rpm)
             out.append(
                 {
                     "note": seen.note,
@@ -671,10 +669,11 @@ class _Answer:
             return spread(middle, ends, low=own, high=own)[which]
 
         def required(at: Setting, state: State, x: float) -> float:
-            return float(suction.npsh_required(state, math.exp(x) / at.tach))
+            """ln NPSHR."""
+            return math.log(suction.npsh_required(state, math.exp(x) / at.tach))
 
         def margin(at: Setting, state: State, x: float) -> float:
-            return float(state.npsh_available) - required(at, state, x)
+            return float(state.npsh_available) - math.exp(required(at, state, x))
 
         def limit(at: Setting, state: State, x: float) -> float:
             return x
@@ -682,14 +681,14 @@ class _Answer:
         capped, middle = check.capped, quantiles[1]
         log_low, log_high = check.plan_ratio
         ratio = None if check.asked is None else math.exp(4 / 3 * (middle - check.asked))
-        demand = required(check.centre, check.state, middle)
+        demand = math.exp(required(check.centre, check.state, middle))
         s_low, s_high = math.exp(side(limit, 0, 0)), math.exp(side(limit, 1, 2)) if capped else None
         return {
             "npsh_required": _value(
                 demand if capped else None,
                 "m",
-                side(required, 0, 2) if capped else None,
-                side(required, 1, 0),
+                math.exp(side(required, 0, 2)) if capped else None,
+                math.exp(side(required, 1, 0)),
                 "M",
             ),
             "margin": _value(

@@ -346,7 +346,7 @@ class Reckoning:
         known, still = self.known_at_plan, (0.0, 0.0, 0.0)
         if self.fixed is not None or known.belief is None:
             return [still] * len(self.ends)
-        low, middle, high = notes.followed(known.bounds, known.belief, (LOW, MIDDLE, HIGH))
+        low, middle, high = notes.followed(known.bounds, (LOW, MIDDLE, HIGH))
         moved: list[tuple[float, float, float] | None] = []
         for end in self.ends:
             xs = [end.xs[b.note] for b in known.bounds]
@@ -564,7 +564,7 @@ class Reckoning:
         own: tuple[float, float],
         follows: tuple[int, int] | int,
         rpm: float,
-        steps: Sequence[float | None],
+        steps: Sequence[float | None] | None = None,
     ) -> Line:
         """A line's rpm with its band.
 
@@ -573,7 +573,8 @@ class Reckoning:
         :param follows: the quantiles of S (0 low, 1 middle, 2 high) that the low and the high side move
             with, or the note that the whole line follows
         :param rpm: engine rpm on the line
-        :param steps: by how much each end moves the ln S asked there
+        :param steps: by how much each end moves the ln S asked near there, for a band by the slope; left out,
+            rpm is solved anew under each end
         """
         slope = self.slope(rpm, boat_speed)
         if isinstance(follows, int):
@@ -586,12 +587,11 @@ class Reckoning:
                 [None if q is None else q[first] for q in self.learned_ends],
                 [None if q is None else q[second] for q in self.learned_ends],
             )
+        low_ends = self._rpm_ends(x, boat_speed, kind, rpm, learned[0], steps)
+        alike = learned[0] is learned[1]
+        high_ends = low_ends if alike else self._rpm_ends(x, boat_speed, kind, rpm, learned[1], steps)
         sides = []
-        for sign, far, moves in ((-1, own[0], learned[0]), (1, own[1], learned[1])):
-            rpm_ends = [
-                None if move is None or step is None else (move - step) / slope
-                for move, step in zip(moves, steps, strict=True)
-            ]
+        for sign, far, rpm_ends in ((-1, own[0], low_ends), (1, own[1], high_ends)):
             power_ends = [
                 None if end is None else 3 * end + absorbed
                 for end, absorbed in zip(rpm_ends, self.absorbed_steps, strict=True)
@@ -600,3 +600,31 @@ class Reckoning:
             sides.append(math.exp(sign * reach(power_ends, 3 * far / slope, sign)))
         rpm_low, power_low, rpm_high, power_high = sides
         return Line(rpm, x, kind, rpm * rpm_low, rpm * rpm_high, power_low, power_high)
+
+    def _rpm_ends(
+        self,
+        x: float,
+        boat_speed: float,
+        kind: str,
+        rpm: float,
+        moves: Sequence[float | None],
+        steps: Sequence[float | None] | None,
+    ) -> list[float | None]:
+        """By how much each end moves ln rpm of a line, where it moves the line's ln S."""
+        if steps is not None:
+            slope = self.slope(rpm, boat_speed)
+            return [
+                None if move is None or step is None else (move - step) / slope
+                for move, step in zip(moves, steps, strict=True)
+            ]
+        out: list[float | None] = []
+        for end, move in zip(self.ends, moves, strict=True):
+            at = end.setting
+            if move is None or at.head <= 0:
+                out.append(None)
+            elif kind == "stop":
+                out.append(math.log(boiling_rpm(at, boat_speed) / rpm))
+            else:
+                s = math.exp(x + move) / at.tach
+                out.append(math.log(suction.rpm_at(at.unit, at.head, at.density, boat_speed, s) / rpm))
+        return out

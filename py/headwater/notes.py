@@ -121,20 +121,20 @@ def learn(bounds: Iterable[Bound]) -> Belief:
     return Belief(bottom + first * step, step, [weight + 1e-300 for weight in weights])
 
 
-def followed(bounds: Sequence[Bound], belief: Belief, shares: Sequence[float]) -> list[list[float]]:
+def followed(bounds: Sequence[Bound], shares: Sequence[float]) -> list[list[float]]:
     """How far each quantile of the belief follows each bound, d quantile / d x, by learning with it moved.
 
-    :param belief: learned from these bounds
     :param shares: of the quantiles
     :returns: for each quantile one number a bound
     """
-    before = [belief.quantile(share) for share in shares]
     rows: list[list[float]] = [[] for _ in shares]
     for i, bound in enumerate(bounds):
-        move = bound.sigma / 2
-        moved = learn([*bounds[:i], bound._replace(x=bound.x + move), *bounds[i + 1 :]])
-        for row, share, quantile in zip(rows, shares, before, strict=True):
-            row.append((moved.quantile(share) - quantile) / move)
+        down, up = (
+            learn([*bounds[:i], bound._replace(x=bound.x + side * bound.sigma), *bounds[i + 1 :]])
+            for side in (-1, 1)
+        )
+        for row, share in zip(rows, shares, strict=True):
+            row.append((up.quantile(share) - down.quantile(share)) / (2 * bound.sigma))
     return rows
 
 
