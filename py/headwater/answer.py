@@ -36,7 +36,10 @@ CONTRACT = 1
 CURVE_SPEEDS = [float(v) for v in range(26)]  # m/s
 _NODES = (0.0, 8.0, 16.0, 25.0)  # m/s, where the curve's limits and bands are worked out in full
 _NODE_PASSES = 2  # rounds in finding a node's holding rpm
-_SEA_LEVEL_WATER = 288.15  # K, for the share of what she holds at sea level
+# Head over boiling at sea level in 15 C water [m], for the share of what she holds there.
+_SEA_LEVEL_HEAD = suction.head_at_rest(
+    air.STANDARD_PRESSURE, water.vapor_pressure(288.15), water.density(288.15), 0.0
+)
 _COEFFICIENTS = (
     "boat.wake_fraction",
     "boat.ram_loss",
@@ -258,6 +261,7 @@ class _Answer:
             self.held_to if standing else self.check.holding(0.0, min(self.check.rpm, self.wide_open))
         )
         self.lines = self._lines()
+        self.shares = {"holding_rpm_share": self._share(0.5), "holding_power_share": self._share(1.5)}
         papers = self.boat["rpm_from"] == "papers" and "power" in self.plan
         self.decision = verdict.steady(
             self.check, self.typed, papers, self.held_to.rpm if self.held_to else None
@@ -332,13 +336,16 @@ class _Answer:
         check, at = self.check, self.check.centre
         if not check.has_head:
             return {}
-        rpm = held.rpm if held else self.wide_open
-        state = suction.state(at.unit, at.head, at.density, rpm, speed)
-        known = check.known(speed, state.flow / rpm)
-        shared = None if exact else held.steps if held else check.asked_steps(rpm, speed)
+        if held:
+            known, shared = held.known, held.steps
+        else:
+            state = suction.state(at.unit, at.head, at.density, self.wide_open, speed)
+            known = check.known(speed, state.flow / self.wide_open)
+            shared = check.asked_steps(self.wide_open, speed)
+        steps = None if exact else shared
 
         def line(x: float, kind: str, own: tuple[float, float]) -> Line:
-            return check.line(x, speed, kind, own, (0, 2), check.rpm_at(x, speed), shared)
+            return check.line(x, speed, kind, own, (0, 2), check.rpm_at(x, speed), steps)
 
         lines = {}
         if held:
@@ -383,7 +390,7 @@ class _Answer:
         columns = list(zip(*ends, strict=True))
         for speed, shares in _CURVE_SHARES:
             x, rpm_low, rpm_high, power_low, power_high = (sumprod(shares, column) for column in columns)
-            value = self.check.rpm_at(x, speed)
+            value = self.check.rpm_at(x, speed, suction.FEW_STEPS)
             at_rpm = self.power(value)
             rpm["value"].append(value)
             rpm["low"].append(value * rpm_low)
@@ -449,8 +456,8 @@ class _Answer:
             "reserve": self.plan["reserve"],
             "teach": self._teach(),
             "note": None,
-            "holding_rpm_share": self._share(0.5)[0],
-            "holding_power_share": self._share(1.5)[0],
+            "holding_rpm_share": self.shares["holding_rpm_share"][0],
+            "holding_power_share": self.shares["holding_power_share"][0],
         }
         asks_speed = self.typed and self.decision.verdict != "go"
         facts["plan_speed"] = self._speed_for(check.rpm, curve) if asks_speed else facts["full_speed"]
@@ -549,11 +556,8 @@ class _Answer:
         """What any pump holds at rest here over what it holds at sea level in 15 C water, with its band."""
 
         def share(at: Setting) -> float:
-            pressure = water.vapor_pressure(_SEA_LEVEL_WATER)
-            level = suction.head_at_rest(
-                air.STANDARD_PRESSURE, pressure, water.density(_SEA_LEVEL_WATER), at.submergence
-            )
-            return max(at.head / level, 0.0) ** power if level > 0 else 0.0
+            level = _SEA_LEVEL_HEAD + at.submergence
+            return float(max(at.head / level, 0.0) ** power) if level > 0 else 0.0
 
         centre = share(self.check.centre)
         low, high = spread(centre, (share(end.setting) for end in self.check.ends))
@@ -581,8 +585,7 @@ class _Answer:
             out[name + "_rpm"] = _value(line.rpm, "rev/min", line.low, line.high, mark, **out_of_reach)
             low, high = power * line.power_low, power * line.power_high
             out[name + "_power"] = _value(power, "W", low, high, mark, **out_of_reach)
-        for name, power in (("holding_rpm_share", 0.5), ("holding_power_share", 1.5)):
-            centre, low, high = self._share(power)
+        for name, (centre, low, high) in self.shares.items():
             out[name] = _value(centre, "1", low, high, "D")
         full = facts["full_speed"]
         out["full_speed"] = None if full is None else _value(full, "m/s", None, None, "M")

@@ -7,6 +7,7 @@ absorption law that the plan then uses. Shifts are carried in ln S and ln rpm, u
 import math
 from collections.abc import Callable, Iterable, Sequence
 from functools import cached_property
+from operator import mul
 from typing import NamedTuple
 
 from headwater import jet, notes, suction, water
@@ -98,6 +99,7 @@ class Holding(NamedTuple):
     x: float  # ln S asked there
     kind: str  # what sets it: proven, chance, reserve, let_go, stop, disagree
     steps: Sequence[float | None]  # by how much each end moves x
+    known: Known  # what it was judged by
 
 
 class Line(NamedTuple):
@@ -169,10 +171,7 @@ def boiling_rpm(at: Setting, boat_speed: float) -> float:
 
 def sumprod(first: Sequence[float], second: Sequence[float]) -> float:
     """Sum of products."""
-    total = 0.0
-    for a, b in zip(first, second, strict=True):
-        total += a * b
-    return total
+    return float(sum(map(mul, first, second)))
 
 
 def reach(steps: Sequence[float | None], own: float, sign: int) -> float:
@@ -275,6 +274,16 @@ class Reckoning:
 
     def known(self, boat_speed: float, flow_per_rpm: float) -> Known:
         """What the notes say of a state with this Q/N."""
+        if boat_speed or any(note.boat_speed for note in self.seen):
+            return self._known(boat_speed, flow_per_rpm)
+        return self._known_standing
+
+    @cached_property
+    def _known_standing(self) -> Known:
+        """The same at rest from notes at rest, which no Q/N sets apart."""
+        return self._known(0.0, self.flow_at_rest)
+
+    def _known(self, boat_speed: float, flow_per_rpm: float) -> Known:
         limit = self.bounds(boat_speed, flow_per_rpm)
         flare = [b._replace(below=self.seen[b.note].outcome == "held") for b in limit if not b.hint]
         bounds = notes.agreeing(limit)
@@ -470,10 +479,10 @@ class Reckoning:
 
     # Lines: the rpm that holds, flares, lets go
 
-    def rpm_at(self, x: float, boat_speed: float) -> float:
+    def rpm_at(self, x: float, boat_speed: float, steps: int = suction.STEPS) -> float:
         """Engine rpm that asks ln S of x here at a boat speed."""
         at = self.centre
-        return float(suction.rpm_at(at.unit, at.head, at.density, boat_speed, math.exp(x)))
+        return float(suction.rpm_at(at.unit, at.head, at.density, boat_speed, math.exp(x), steps))
 
     @cached_property
     def has_head(self) -> bool:
@@ -536,7 +545,7 @@ class Reckoning:
                 found, kind = eased * (1 - EQUAL), "disagree"
         if kind in ("stop", "disagree"):
             x = asked(self.centre, found, boat_speed) or x
-        return Holding(found, x, kind, steps)
+        return Holding(found, x, kind, steps, known)
 
     def _new_ground(self, known: Known, x: float, steps: Sequence[float | None]) -> float | None:
         """The largest ln S that is a go on new ground, judged with the doubt of the state that asks x."""
@@ -626,5 +635,6 @@ class Reckoning:
                 out.append(math.log(boiling_rpm(at, boat_speed) / rpm))
             else:
                 s = math.exp(x + move) / at.tach
-                out.append(math.log(suction.rpm_at(at.unit, at.head, at.density, boat_speed, s) / rpm))
+                found = suction.rpm_at(at.unit, at.head, at.density, boat_speed, s, suction.FEW_STEPS)
+                out.append(math.log(found / rpm))
         return out
