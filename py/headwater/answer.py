@@ -35,7 +35,7 @@ from headwater.suction import State
 CONTRACT = 1
 CURVE_SPEEDS = [float(v) for v in range(26)]  # m/s
 _NODES = (0.0, 8.0, 16.0, 25.0)  # m/s, where the curve's limits and bands are worked out in full
-_NODE_PASSES = 2  # rounds in finding a node's holding rpm
+_NODE_PASSES = 1  # rounds in finding a node's holding rpm, from where the node before it holds
 # Head over boiling at sea level in 15 C water [m], for the share of what she holds there.
 _SEA_LEVEL_HEAD = suction.head_at_rest(
     air.STANDARD_PRESSURE, water.vapor_pressure(288.15), water.density(288.15), 0.0
@@ -158,6 +158,11 @@ def spans_of(
         assert field.span and field.default
         low, high = (here * end / field.default for end in field.span)
         spans[key] = (max(low, field.low), min(high, field.high))
+    # Pump and driveline act as one efficiency: their spans in quadrature, moved together.
+    pump, driveline = spans["boat.pump_efficiency"], spans.pop("boat.driveline_efficiency")
+    here, other = inputs["boat.pump_efficiency"], inputs["boat.driveline_efficiency"]
+    low, high = (math.hypot(math.log(pump[k] / here), math.log(driveline[k] / other)) for k in (0, 1))
+    spans["boat.pump_efficiency"] = (here * math.exp(-low), here * math.exp(high))
     for key in ("boat.nozzle_diameter", "boat.impeller_diameter"):
         spans[key] = _about(inputs[key], FIELD[key].tolerance)
     hub = FIELD["boat.hub_diameter"]
@@ -361,7 +366,8 @@ class _Answer:
             if belief and check.fixed is None:
                 low, middle, high = (belief.quantile(share) for share in (LOW, MIDDLE, HIGH))
                 own = (middle - low, high - middle)
-            lines["flare"] = line(flare.x, "flare", own)
+            rpm = check.rpm_at(flare.x, speed)
+            lines["flare"] = check.line(flare.x, speed, "flare", own, (0, 2), rpm, shared)
         return lines
 
     def _lines(self) -> dict[str, Line]:
@@ -373,7 +379,7 @@ class _Answer:
         for speed in _NODES:
             if speed:
                 held = check.holding(speed, check.rpm_at(held.x, speed) if held else None, _NODE_PASSES)
-            nodes.append(self._lines_at(speed, held, exact=False))
+            nodes.append(self.lines if speed == self.speed else self._lines_at(speed, held, exact=False))
         curve: dict[str, Any] = {"boat_speed": CURVE_SPEEDS}
         for name in ("holding", "let_go", "flare"):
             drawn = all(name in node for node in nodes)
@@ -424,10 +430,11 @@ class _Answer:
             if not check.has_head:
                 break
             rpm = check.rpm_at(check.xs[i], self.speed)
-            state = suction.state(at.unit, at.head, at.density, rpm, self.speed)
-            bound = next(b for b in check.bounds(self.speed, state.flow / rpm) if b.note == i)
-            own = SIGMAS * bound.sigma
-            line = check.line(bound.x, self.speed, seen.outcome, (own, own), i, rpm)
+            line = self.lines.get("holding")
+            if not (line and line.kind == "proven" and line.x == check.xs[i]):
+                state = suction.state(at.unit, at.head, at.density, rpm, self.speed)
+                own = SIGMAS * check.bounds(self.speed, state.flow / rpm)[i].sigma
+                line = check.line(check.xs[i], self.speed, seen.outcome, (own, own), i, rpm)
             out.append(
                 {
                     "note": seen.note,

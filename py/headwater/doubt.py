@@ -25,6 +25,7 @@ SIGMAS = 1.959964  # of a 95 % half-width
 CHANCE = 0.04  # of letting go, the most that proven ground may carry [P]
 LOW, MIDDLE, HIGH = 0.025, 0.5, 0.975
 EQUAL = 1e-6  # in ln S
+_FEW_PASSES = 2  # with so few the ends are worked out but once
 _SAME_DOUBT = 0.005  # relative change of rpm under which the ends are not worked out again
 DISAGREE_EASE = 0.95  # of the lowest let-go rpm, from where notes that contradict forbid a go [P]
 
@@ -497,14 +498,14 @@ class Reckoning:
         if not self.has_head or (self.fixed is None and not self.today):
             return None
         at, rpm, found = self.centre, start or self.rpm, None
-        judged, same = math.inf, _SAME_DOUBT
+        judged, same = math.inf, _SAME_DOUBT if passes > _FEW_PASSES else math.inf
         steps: list[float | None] = []
         for _ in range(passes):
             state = suction.state(at.unit, at.head, at.density, rpm, boat_speed)
             if state.npsh_available <= 0:
                 rpm *= 0.8
                 continue
-            if abs(judged / rpm - 1) > same:
+            if not steps or abs(judged / rpm - 1) > same:
                 judged, steps = rpm, self.asked_steps(rpm, boat_speed)
             known = self.known(boat_speed, state.flow / rpm)
             slope = float(suction.rpm_slope(at.unit, state, boat_speed))
@@ -526,10 +527,12 @@ class Reckoning:
             if known.belief.chance_under(known.proven.x, sigma) <= CHANCE:
                 limits.append((known.proven.x, "proven"))
             else:
-                limits.append((known.belief.x_at_chance(CHANCE, sigma), "chance"))
-        new = self._new_ground(known, x, [*steps, -slope * RPM_SCATTER, slope * RPM_SCATTER])
-        if new is not None:
-            limits.append((new, "reserve"))
+                limits.append((known.belief.x_at_chance(CHANCE, sigma, known.proven.x), "chance"))
+        low = self.limit(known, LOW)
+        if low is not None and (not limits or low - 0.75 * math.log(self.reserve) > limits[0][0]):
+            new = self._new_ground(known, x, [*steps, -slope * RPM_SCATTER, slope * RPM_SCATTER])
+            if new is not None:
+                limits.append((new, "reserve"))
         if not limits:
             return None
         x, kind = max(limits)
@@ -599,16 +602,18 @@ class Reckoning:
         low_ends = self._rpm_ends(x, boat_speed, kind, rpm, learned[0], steps)
         alike = learned[0] is learned[1]
         high_ends = low_ends if alike else self._rpm_ends(x, boat_speed, kind, rpm, learned[1], steps)
-        sides = []
-        for sign, far, rpm_ends in ((-1, own[0], low_ends), (1, own[1], high_ends)):
-            power_ends = [
-                None if end is None else 3 * end + absorbed
-                for end, absorbed in zip(rpm_ends, self.absorbed_steps, strict=True)
-            ]
-            sides.append(math.exp(sign * reach(rpm_ends, far / slope, sign)))
-            sides.append(math.exp(sign * reach(power_ends, 3 * far / slope, sign)))
-        rpm_low, power_low, rpm_high, power_high = sides
-        return Line(rpm, x, kind, rpm * rpm_low, rpm * rpm_high, power_low, power_high)
+        far = own[0] / slope, own[1] / slope
+        rpm_low, rpm_high = math.exp(-reach(low_ends, far[0], -1)), math.exp(reach(high_ends, far[1], 1))
+        low_power, high_power = (self._power_ends(ends) for ends in (low_ends, high_ends))
+        power_low, power_high = reach(low_power, 3 * far[0], -1), reach(high_power, 3 * far[1], 1)
+        return Line(rpm, x, kind, rpm * rpm_low, rpm * rpm_high, math.exp(-power_low), math.exp(power_high))
+
+    def _power_ends(self, rpm_ends: Sequence[float | None]) -> list[float | None]:
+        """By how much each end moves ln power on a line, from how it moves ln rpm."""
+        return [
+            None if end is None else 3 * end + absorbed
+            for end, absorbed in zip(rpm_ends, self.absorbed_steps, strict=True)
+        ]
 
     def _rpm_ends(
         self,

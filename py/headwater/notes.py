@@ -20,7 +20,7 @@ FLARE_EASE = 0.90  # of the lowest flared rpm, where nothing has held yet [P]
 DISAGREE_SIGMAS = 1.96  # joint spreads by which notes must cross to contradict each other
 _ROOT_HALF = math.sqrt(0.5)
 _ROOT_TWO_PI = math.sqrt(2 * math.pi)
-_CELLS_A_SIGMA = 3  # to which a blur is resolved
+_CELLS_A_SIGMA = 2  # to which a blur is resolved
 _WINDOW = 4.0  # sigmas beyond which a bound is taken as certain
 
 
@@ -58,9 +58,12 @@ class Belief:
         """Chance that ln S lies under x, where x itself is known to one sigma."""
         return self._chance_and_density(x, sigma)[0]
 
-    def x_at_chance(self, chance: float, sigma: float) -> float:
-        """The x with this chance under it: :meth:`chance_under` solved by Newton's method."""
-        x = self.quantile(chance)
+    def x_at_chance(self, chance: float, sigma: float, start: float) -> float:
+        """The x with this chance under it: :meth:`chance_under` solved by Newton's method.
+
+        :param start: where to begin
+        """
+        x = min(start, self.quantile(0.5))  # from where its logarithm falls steadily
         for _ in range(8):
             under, density = self._chance_and_density(x, sigma)
             move = math.log(under / chance) * under / density

@@ -23,7 +23,7 @@ class State(NamedTuple):
     flow: Any  # Q [m3/s]
     inlet_speed: Any  # V_1 ahead of the impeller [m/s]
     npsh_available: Any  # [m], may be negative
-    npsh_demand: Any  # (N sqrt Q)^(4/3), over S^(4/3) the head the impeller asks for
+    impeller_rpm: Any  # N [1/min]
 
 
 def head_at_rest(air_pressure: Any, vapor_pressure: Any, density: Any, submergence: Any) -> Any:
@@ -64,8 +64,7 @@ def state(unit: Unit, head: Any, density: Any, rpm: Any, boat_speed: Any) -> Sta
     flow = unit.nozzle_area * v_j
     v_1 = flow / unit.inlet_area
     available = head + (ram - unit.intake_loss * v_1 * v_1) / (2 * GRAVITY)
-    demand = (rpm / unit.gear_ratio) ** (4 / 3) * flow ** (2 / 3)
-    return State(power, v_j, flow, v_1, available, demand)
+    return State(power, v_j, flow, v_1, available, rpm / unit.gear_ratio)
 
 
 def npsh_required(state: State, suction_specific_speed: Any) -> Any:
@@ -75,7 +74,7 @@ def npsh_required(state: State, suction_specific_speed: Any) -> Any:
     :returns: [m]
     Source: definition of suction specific speed [V].
     """
-    return state.npsh_demand / suction_specific_speed ** (4 / 3)
+    return (state.impeller_rpm * state.flow**0.5 / suction_specific_speed) ** (4 / 3)
 
 
 def speed_asked(state: State) -> Any:
@@ -84,7 +83,7 @@ def speed_asked(state: State) -> Any:
     :returns: S, metric
     Source: definition of suction specific speed [V].
     """
-    return (state.npsh_demand / state.npsh_available) ** 0.75
+    return state.impeller_rpm * state.flow**0.5 / state.npsh_available**0.75
 
 
 def static_pressure(state: State, vapor_pressure: Any, density: Any) -> Any:
