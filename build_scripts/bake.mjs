@@ -48,6 +48,8 @@ except ZeroDivisionError:
     traceback.format_exc()
 wanted = {n for n in set(sys.modules) if stdlib(n)} | {n for n in sys.modules if n.partition(".")[0] == "headwater"}
 wanted |= {n for n in at_start if n.partition(".")[0] in ("_pyodide", "pyodide", "encodings")}
+# Loaded at each start where they are found, and done without where they are not.
+wanted = {n for n in wanted if n.partition(".")[0] not in {"ssl", "_ssl", "bz2", "lzma", "compression"}}
 buffer = io.BytesIO()
 with zipfile.ZipFile(buffer, "w", zipfile.ZIP_STORED) as archive:
     for name in sorted(wanted):
