@@ -5,6 +5,7 @@ import json
 import shutil
 import subprocess
 import sys
+import tempfile
 import time
 from pathlib import Path
 
@@ -21,36 +22,38 @@ DIST = ROOT / "dist"
 
 
 def build(out: Path = DIST) -> Path:
-    """Build the app into a folder, anew; returns the folder."""
+    """Build the app into a folder; what was there stays until the new one stands. Returns the folder."""
     started = time.monotonic()
     CACHE.mkdir(exist_ok=True)
-    work = CACHE / "work"
-    for folder in (work, out):
-        shutil.rmtree(folder, ignore_errors=True)
-        folder.mkdir(parents=True)
+    with tempfile.TemporaryDirectory(dir=CACHE) as work:
+        made = _make(Path(work))
+        shutil.rmtree(out, ignore_errors=True)
+        shutil.move(made, out)
+    machine.say(f"built {out.name}/ in {time.monotonic() - started:.1f} s")
+    return out
+
+
+def _make(work: Path) -> Path:
+    """Each step in its order; the service worker's list and the compressed twins come last."""
+    out = work / "dist"
+    out.mkdir()
     demo = json.loads((ROOT / "static" / "demo.json").read_text())
     runtime = bake.copy_runtime(PWA / "node_modules" / "pyodide", out)
     core = named_by_content(bake.bake(work, demo["case"]), out / "app")
     icons.draw(ROOT / "static" / "icon.svg", out / "icons")
-    style = named_by_content(bundle.style(PWA / "css" / "main.css", work), out / "app")
-    worker = named_by_content(bundle.script(PWA / "worker" / "worker.js", work), out / "app")
-    main = named_by_content(bundle.script(PWA / "app" / "main.js", work), out / "app")
     links = {
-        "style": style,
-        "main": main,
-        "worker": worker,
+        "style": named_by_content(bundle.style(PWA / "css" / "main.css", work), out / "app"),
+        "main": named_by_content(bundle.script(PWA / "app" / "main.js", work), out / "app"),
+        "worker": named_by_content(bundle.script(PWA / "worker" / "worker.js", work), out / "app"),
         "core": core,
         "runtime": runtime,
     }
-    policy = page.render(
-        out, {key: str(path.relative_to(out).as_posix()) for key, path in links.items()}, demo
-    )
+    policy = page.render(out, {key: path.relative_to(out).as_posix() for key, path in links.items()}, demo)
     for name in ("licences", "screenshots"):
         shutil.copytree(ROOT / "static" / name, out / name)
     bundle.service_worker(PWA / "sw" / "sw.js", out, pack.precache(out))
     (out / "policy.txt").write_text(policy + "\n")
     pack.compress(out)
-    machine.say(f"built {out.name}/ in {time.monotonic() - started:.1f} s")
     return out
 
 

@@ -33,7 +33,10 @@ def main() -> None:
     if options.https:
         host, names = "0.0.0.0", [_own_address(), "localhost"]
         tls = _certificate(names)
-    running = server.make(folder, host, options.port, tls, quiet=False)
+    try:
+        running = server.make(folder, host, options.port, tls, quiet=False)
+    except OSError as error:
+        sys.exit(f"Port {options.port} cannot be used ({error.strerror}): choose another with --port.")
     scheme, port = "https" if tls else "http", running.server_address[1]
     address = f"{scheme}://{names[0]}:{port}/#demo"
     print(f"Headwater with the demo boat: {address}", flush=True)

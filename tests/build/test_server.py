@@ -1,6 +1,8 @@
 """The server: right types, caching, compression, security headers, and no page where a file is missing."""
 
 import gzip
+import ssl
+import threading
 import urllib.error
 import urllib.request
 from collections.abc import Callable
@@ -9,6 +11,9 @@ from typing import Any
 
 import brotli
 import pytest
+
+import serve
+import server as web
 
 Get = Callable[..., Any]
 LASTING = "public, max-age=31536000, immutable"
@@ -117,3 +122,19 @@ def test_nothing_answers_once_the_server_is_killed(server: Any) -> None:
     server.kill()
     with pytest.raises(urllib.error.URLError):
         urllib.request.urlopen(server.url)
+
+
+def test_https_for_a_phone_in_the_same_network(dist: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    context = serve._certificate(["127.0.0.1"])
+    authority = capsys.readouterr().out.strip().rpartition(" ")[2]
+    running = web.make(dist, "127.0.0.1", 0, context)
+    threading.Thread(target=running.serve_forever, daemon=True).start()
+    trusting = ssl.create_default_context(cafile=authority)
+    address = f"https://127.0.0.1:{running.server_address[1]}/"
+    try:
+        assert urllib.request.urlopen(address, context=trusting).read() == (dist / "index.html").read_bytes()
+        with pytest.raises(urllib.error.URLError, match="CERTIFICATE_VERIFY_FAILED"):
+            urllib.request.urlopen(address)
+    finally:
+        running.shutdown()
+        running.server_close()
