@@ -293,7 +293,7 @@ class _Answer:
                 inputs["boat.engine_power"], inputs["boat.wide_open_rpm"], inputs["boat.jets"]
             )
             return float((self.plan["power"] / self.running / absorbed) ** (1 / 3))
-        return float(self.plan.get("throttle", 1.0) * inputs["boat.wide_open_rpm"])
+        return float(self.plan.get("throttle", 1.0) * self.wide_open)  # no plan typed counts as a plan in rpm
 
     def power(self, rpm: float) -> float:
         """Engine power of the running units at an rpm [W]."""
@@ -708,7 +708,9 @@ class _Answer:
                 side(margin, 1, 2) if capped else None,
                 "M",
             ),
-            "ratio": _value(
+            "ratio": None
+            if ratio is None
+            else _value(
                 ratio if capped else None,
                 "1",
                 None if log_low is None else math.exp(log_low),

@@ -7,6 +7,7 @@ absorption law that the plan then uses. Shifts are carried in ln S and ln rpm, u
 import math
 from collections.abc import Callable, Iterable, Sequence
 from functools import cached_property
+from itertools import zip_longest
 from operator import mul
 from typing import NamedTuple
 
@@ -82,8 +83,13 @@ class Known(NamedTuple):
     bounds: list[Bound]  # on the limit, without those that contradict
     flare_bounds: list[Bound]
     belief: notes.Belief | None
-    proven: Bound | None  # the hardest clean held note
+    held: list[Bound]  # clean held notes of today's set-up, the hardest first
     lid: Bound | None  # the lowest let go
+
+    @property
+    def proven(self) -> Bound | None:
+        """The hardest clean held note."""
+        return self.held[0] if self.held else None
 
 
 class Flare(NamedTuple):
@@ -286,20 +292,55 @@ class Reckoning:
 
     def _known(self, boat_speed: float, flow_per_rpm: float) -> Known:
         limit = self.bounds(boat_speed, flow_per_rpm)
-        flare = [b._replace(below=self.seen[b.note].outcome == "held") for b in limit if not b.hint]
-        bounds = notes.agreeing(limit)
+        bounds = [b for b in limit if b.note not in self.dropped]
         held = [b for b in bounds if self.seen[b.note].outcome == "held" and not b.hint]
+        flare = [b for b in self._flare_bounds(limit) if b.note not in self._flare_dropped]
         return Known(
             bounds,
-            notes.agreeing(flare),
+            flare,
             notes.learn(bounds) if bounds else None,
-            max(held, key=lambda b: b.x) if held else None,
+            sorted(held, key=lambda b: -b.x),
             notes.lowest_above(limit),
         )
 
     @cached_property
     def known_at_plan(self) -> Known:
+        """What is known for the plan's own state."""
         return self.known(self.boat_speed, self.state.flow / self.rpm)
+
+    def _flare_bounds(self, limit: Sequence[Bound]) -> list[Bound]:
+        """Notes of today's set-up as bounds on the flare line: all but what held bounds it from above."""
+        return [b._replace(below=self.seen[b.note].outcome == "held") for b in limit if not b.hint]
+
+    @cached_property
+    def _own(self) -> list[Bound]:
+        """Notes of today's set-up as bounds on the limit, each with its own scatter alone."""
+        return [
+            Bound(i, x, sigma, note.outcome != "let_go", False)
+            for i, (x, sigma, note) in enumerate(zip(self.xs, self.sigmas, self.seen, strict=True))
+            if not note.hint
+        ]
+
+    def _apart(self, first: int, second: int) -> float:
+        """One sigma in ln S between two notes that saw different blade angles."""
+        if self.seen[first].boat_speed or self.seen[second].boat_speed:
+            return abs(math.log(self.flow_per_rpm[first] / self.flow_per_rpm[second]))
+        return 0.0
+
+    @cached_property
+    def contradiction(self) -> tuple[int, int] | None:
+        """A note that held or flared and the let-go note it contradicts, by their places in ``seen``."""
+        return notes.contradiction(self._own, self._apart)
+
+    @cached_property
+    def dropped(self) -> set[int]:
+        """Notes that prove nothing, since they contradict."""
+        return notes.crossed(self._own) if self.contradiction else set()
+
+    @cached_property
+    def _flare_dropped(self) -> set[int]:
+        flare = self._flare_bounds(self._own)
+        return notes.crossed(flare) if notes.contradiction(flare, self._apart) else set()
 
     @cached_property
     def today(self) -> bool:
@@ -311,13 +352,6 @@ class Reckoning:
         """Q/N at rest, the same at any rpm [m3 min/s]."""
         at = self.centre
         return float(suction.state(at.unit, at.head, at.density, self.rpm, 0.0).flow / self.rpm)
-
-    @cached_property
-    def contradiction(self) -> tuple[int, int] | None:
-        """The hardest held note and the let-go note it contradicts, by their places in ``seen``."""
-        limit = [b for b in self.bounds(self.boat_speed, self.state.flow / self.rpm) if not b.hint]
-        crossed, lid = notes.contradicting(limit), notes.lowest_above(limit)
-        return (max(crossed, key=lambda b: b.x).note, lid.note) if crossed and lid else None
 
     @cached_property
     def capped(self) -> bool:
@@ -408,25 +442,19 @@ class Reckoning:
         state = suction.state(at.unit, at.head, at.density, rpm, boat_speed)
         return float(suction.rpm_slope(at.unit, state, boat_speed))
 
-    def plan_sigma(self, known: Known, x: float, slope: float, steps: Sequence[float | None]) -> float:
-        """One sigma in ln S of what does not cancel between a state and its nearest note.
+    def _blur(self, bound: Bound, slope: float, steps: Sequence[float | None]) -> float:
+        """One sigma in ln S of what does not cancel between a state and a note.
 
-        :param x: ln S asked
-        :param slope: d ln S_req / d ln rpm there
-        :param steps: by how much each end moves x
+        :param slope: d ln S_req / d ln rpm at the state
+        :param steps: by how much each end moves the ln S that the state asks
         """
-        total = (slope * RPM_SCATTER / 2) ** 2
-        today = [b for b in known.bounds if not b.hint]
-        if today:
-            near = min(today, key=lambda b: abs(b.x - x))
-            apart = []
-            for end, step in zip(self.ends, steps, strict=True):
-                there = end.xs[near.note]
-                apart.append(None if step is None or there is None else step - (there - near.x))
-            total += (reach(apart, 0.0, 1) / SIGMAS) ** 2
-        return math.sqrt(total)
+        apart = []
+        for end, step in zip(self.ends, steps, strict=True):
+            there = end.xs[bound.note]
+            apart.append(None if step is None or there is None else step - (there - bound.x))
+        return math.hypot(slope * RPM_SCATTER / 2, reach(apart, 0.0, 1) / SIGMAS)
 
-    def _apart(self, steps: Sequence[float | None], side: int) -> list[float | None]:
+    def _away(self, steps: Sequence[float | None], side: int) -> list[float | None]:
         """By how much each end moves the limit's quantile away from what a state asks."""
         learned = [*self.learned_ends, (0.0, 0.0, 0.0), (0.0, 0.0, 0.0)]
         return [
@@ -439,14 +467,14 @@ class Reckoning:
         middle, low = self.limit(known, MIDDLE), self.limit(known, LOW)
         if middle is None or low is None:
             return None
-        return 4 / 3 * (middle - x - reach(self._apart(steps, 0), middle - low, -1))
+        return 4 / 3 * (middle - x - reach(self._away(steps, 0), middle - low, -1))
 
     def ratio_high(self, known: Known, x: float, steps: Sequence[float | None]) -> float | None:
         """ln of the high side of NPSHA/NPSHR; none while nothing bounds the pump from above."""
         middle, high = self.limit(known, MIDDLE), self.limit(known, HIGH)
         if middle is None or high is None or not self.capped:
             return None
-        return 4 / 3 * (middle - x + reach(self._apart(steps, 2), high - middle, 1))
+        return 4 / 3 * (middle - x + reach(self._away(steps, 2), high - middle, 1))
 
     @cached_property
     def plan_ratio(self) -> tuple[float | None, float | None]:
@@ -460,11 +488,20 @@ class Reckoning:
         )
 
     @cached_property
-    def plan_blur(self) -> float:
-        """One sigma in ln S of what does not cancel between the plan and its nearest note."""
-        assert self.asked is not None
+    def plan_chance(self) -> float | None:
+        """Chance of letting go at the plan; none where no held note asked as much.
+
+        The plan is blurred by what does not cancel with the nearest of the notes that prove it: the one that
+        shares most of its errors.
+        """
+        known, asked = self.known_at_plan, self.asked
+        assert asked is not None
+        proving = [bound for bound in known.held if bound.x + EQUAL >= asked]
+        if not proving or known.belief is None or self.fixed is not None:
+            return None
         slope = self.slope(self.rpm, self.boat_speed)
-        return self.plan_sigma(self.known_at_plan, self.asked, slope, self.plan_steps[:-2])
+        sigma = min(self._blur(bound, slope, self.plan_steps[:-2]) for bound in proving)
+        return known.belief.chance_under(asked, sigma)
 
     @cached_property
     def new_ground_at_plan(self) -> float | None:
@@ -489,7 +526,7 @@ class Reckoning:
     def has_head(self) -> bool:
         return self.centre.head > 0
 
-    def holding(self, boat_speed: float, start: float | None = None, passes: int = 12) -> Holding | None:
+    def holding(self, boat_speed: float, start: float | None = None, passes: int = 40) -> Holding | None:
         """The most rpm that is a go at a boat speed; none where nothing is known to hold.
 
         :param start: engine rpm to begin from
@@ -497,7 +534,9 @@ class Reckoning:
         """
         if not self.has_head or (self.fixed is None and not self.today):
             return None
-        at, rpm, found = self.centre, start or self.rpm, None
+        at, rpm = self.centre, start or self.rpm
+        before: Holding | None = None
+        found: Holding | None = None
         judged, same = math.inf, _SAME_DOUBT if passes > _FEW_PASSES else math.inf
         steps: list[float | None] = []
         for _ in range(passes):
@@ -509,13 +548,17 @@ class Reckoning:
                 judged, steps = rpm, self.asked_steps(rpm, boat_speed)
             known = self.known(boat_speed, state.flow / rpm)
             slope = float(suction.rpm_slope(at.unit, state, boat_speed))
-            found = self._hold(known, boat_speed, math.log(suction.speed_asked(state)), slope, steps)
+            before, found = (
+                found,
+                self._hold(known, boat_speed, math.log(suction.speed_asked(state)), slope, steps),
+            )
             if found is None or (abs(found.rpm / rpm - 1) < EQUAL / 10 and same == 0.0):
-                break
+                return found
             if abs(found.rpm / rpm - 1) < EQUAL:
                 same = 0.0  # settled: once more with the doubt of this very rpm
             rpm = found.rpm
-        return found
+        # Two rpm that each lead to the other: the lower one is a go, judged at itself.
+        return min(before, found, key=lambda one: one.rpm) if before and found else found
 
     def _hold(
         self, known: Known, boat_speed: float, x: float, slope: float, steps: Sequence[float | None]
@@ -523,11 +566,7 @@ class Reckoning:
         """The most rpm that is a go, judged with the doubt of a state that asks ln S of x."""
         limits = []
         if known.proven and known.belief and self.fixed is None:
-            sigma = self.plan_sigma(known, x, slope, steps)
-            if known.belief.chance_under(known.proven.x, sigma) <= CHANCE:
-                limits.append((known.proven.x, "proven"))
-            else:
-                limits.append((known.belief.x_at_chance(CHANCE, sigma, known.proven.x), "chance"))
+            limits.append(self._proven_limit(known, known.belief, slope, steps))
         low = self.limit(known, LOW)
         if low is not None and (not limits or low - 0.75 * math.log(self.reserve) > limits[0][0]):
             new = self._new_ground(known, x, [*steps, -slope * RPM_SCATTER, slope * RPM_SCATTER])
@@ -549,6 +588,20 @@ class Reckoning:
         if kind in ("stop", "disagree"):
             x = asked(self.centre, found, boat_speed) or x
         return Holding(found, x, kind, steps, known)
+
+    def _proven_limit(
+        self, known: Known, belief: notes.Belief, slope: float, steps: Sequence[float | None]
+    ) -> tuple[float, str]:
+        """The largest ln S under a held note with the chance of letting go small enough, and what sets it."""
+        sigma, x = math.inf, -math.inf
+        for bound, lower in zip_longest(known.held, known.held[1:]):
+            sigma = min(sigma, self._blur(bound, slope, steps))
+            if belief.chance_under(bound.x, sigma) <= CHANCE:
+                return bound.x, "proven"
+            x = belief.x_at_chance(CHANCE, sigma, bound.x)
+            if lower is None or x > lower.x:
+                break
+        return x, "chance"
 
     def _new_ground(self, known: Known, x: float, steps: Sequence[float | None]) -> float | None:
         """The largest ln S that is a go on new ground, judged with the doubt of the state that asks x."""

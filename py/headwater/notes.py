@@ -5,7 +5,7 @@ revs ran up, it did not let go) bounds the limit from below and the flare line f
 """
 
 import math
-from collections.abc import Iterable, Sequence
+from collections.abc import Callable, Iterable, Sequence
 from math import erfc, exp
 from typing import NamedTuple
 
@@ -21,6 +21,7 @@ DISAGREE_SIGMAS = 1.96  # joint spreads by which notes must cross to contradict 
 _ROOT_HALF = math.sqrt(0.5)
 _ROOT_TWO_PI = math.sqrt(2 * math.pi)
 _CELLS_A_SIGMA = 2  # to which a blur is resolved
+_FAR = 5.5  # sigmas of a blur beyond which a cell is wholly under or over
 _WINDOW = 4.0  # sigmas beyond which a bound is taken as certain
 
 
@@ -64,9 +65,9 @@ class Belief:
         :param start: where to begin
         """
         x = min(start, self.quantile(0.5))  # from where its logarithm falls steadily
-        for _ in range(8):
+        for _ in range(12):
             under, density = self._chance_and_density(x, sigma)
-            move = math.log(under / chance) * under / density
+            move = min(max(math.log(under / chance) * under / density, -2 * sigma), 2 * sigma + self.step)
             x -= move
             if abs(move) < 1e-4:  # the next step would be its square
                 break
@@ -77,8 +78,8 @@ class Belief:
             int(sigma / self.step / _CELLS_A_SIGMA), 1
         )  # cells taken together where x is blurred wide
         last = len(self.weights)
-        k = min(max(int((x - _WINDOW * sigma - self.start) / self.step) // stride * stride, 0), last)
-        end = min(int((x + _WINDOW * sigma - self.start) / self.step) + 1, last)
+        k = min(max(int((x - _FAR * sigma - self.start) / self.step) // stride * stride, 0), last)
+        end = min(int((x + _FAR * sigma - self.start) / self.step) + 1, last)
         z = (x - self.start - (k + 0.5 * (stride - 1)) * self.step) / sigma
         under, density, done = 2 * self.below[k], 1e-300, self.below[k]
         while k < end:
@@ -147,19 +148,22 @@ def lowest_above(bounds: Iterable[Bound]) -> Bound | None:
     return min(above, key=lambda bound: bound.x) if above else None
 
 
-def contradicting(bounds: Sequence[Bound]) -> list[Bound]:
-    """Bounds from below that lie over the lowest bound from above by more than their joint scatter allows."""
+def contradiction(bounds: Sequence[Bound], apart: Callable[[int, int], float]) -> tuple[int, int] | None:
+    """The bound from below that most contradicts one from above, and that one, by note; or none.
+
+    :param bounds: of today's set-up, with their own scatter
+    :param apart: one sigma in ln S between two notes that saw different blade angles
+    """
+    found = []
+    for above in (bound for bound in bounds if not bound.below):
+        for below in (bound for bound in bounds if bound.below and bound.x > above.x):
+            joint = math.hypot(below.sigma, above.sigma, apart(below.note, above.note))
+            if below.x - above.x > DISAGREE_SIGMAS * joint:
+                found.append((below.x - above.x, below.note, above.note))
+    return max(found)[1:] if found else None
+
+
+def crossed(bounds: Sequence[Bound]) -> set[int]:
+    """Notes that bound from below over the lowest bound from above; contradicted, they prove nothing."""
     lid = lowest_above(bounds)
-    if lid is None:
-        return []
-    return [
-        bound
-        for bound in bounds
-        if bound.below and bound.x - lid.x > DISAGREE_SIGMAS * math.hypot(bound.sigma, lid.sigma)
-    ]
-
-
-def agreeing(bounds: Sequence[Bound]) -> list[Bound]:
-    """The bounds without those from below that contradict the lowest from above: they prove nothing."""
-    crossed = contradicting(bounds)
-    return [bound for bound in bounds if bound not in crossed] if crossed else list(bounds)
+    return {bound.note for bound in bounds if lid and bound.below and bound.x > lid.x}

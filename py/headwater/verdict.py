@@ -71,13 +71,12 @@ def _inside(check: Reckoning) -> Decision:
     ):
         return Decision("caution", "new", "keep_to", ["disagree"])
     why = []
-    if check.fixed is None and known.proven and known.belief:
-        if asked <= known.proven.x + EQUAL:
-            if known.belief.chance_under(asked, check.plan_blur) <= CHANCE * (1 + EQUAL):
-                return Decision("go", "done_before", "holds", ["done_before"])
-            why.append("chance")
-        else:
-            why.append("past_proven")
+    if check.plan_chance is not None:
+        if check.plan_chance <= CHANCE * (1 + EQUAL):
+            return Decision("go", "done_before", "holds", ["done_before"])
+        why.append("chance")
+    elif known.held and check.fixed is None:
+        why.append("past_proven")
     if check.new_ground_at_plan is not None and asked <= check.new_ground_at_plan + EQUAL:
         return Decision("go", "new", "holds", ["reserve"])
     if check.fixed is not None:
