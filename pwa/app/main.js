@@ -156,9 +156,10 @@ async function share() {
   const url = `${location.origin}${location.pathname}#${reply.fragment}`;
   const words = `${screen.shared_text} ${at("headline").textContent} ${at("lead").textContent}`;
   try {
-    if (navigator.share) await navigator.share({ title: screen.title, text: words, url });
+    const sheet = "share" in navigator; // the phone's own
+    if (sheet) await navigator.share({ title: screen.title, text: words, url });
     else await navigator.clipboard.writeText(`${words} ${url}`);
-    state.textContent = navigator.share ? "" : screen.shared;
+    state.textContent = sheet ? "" : screen.shared;
   } catch (error) {
     if (error instanceof Error && error.name === "AbortError") return;
     history.replaceState(history.state, "", `#${reply.fragment}`);
@@ -223,7 +224,10 @@ function bindButtons() {
   });
   at("share").addEventListener("click", share);
   at("repair").addEventListener("click", () => offline.repair());
-  at("fault").querySelector("button").addEventListener("click", () => core.again());
+  at("fault").querySelector("button").addEventListener("click", () => {
+    core.again();
+    check();
+  });
   at("theme").addEventListener("click", () => {
     const night = at("theme").textContent === screen.night;
     setTheme(night ? "night" : "day");

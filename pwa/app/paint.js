@@ -86,7 +86,7 @@ function ledgerRow(row) {
   return made;
 }
 
-/** @param {{title: string, symbol: string, formula: string, numbers: string, result: string, source: string, mark: string}} row */
+/** @param {{title: string, symbol: string, formula: string, numbers: string, result: string, with?: string, source: string, mark: string}} row */
 function workingRow(row) {
   const value = make("dd");
   value.append(make("b", row.result));

@@ -124,7 +124,10 @@ async function bring(path, url, hash) {
   const sources = [() => find(url), () => fetch(url), () => fetch(url, { cache: "reload" })];
   for (const source of sources) {
     const response = await source();
-    if (response && (await isWhole(response.clone(), hash))) return response;
+    if (response && (await isWhole(response.clone(), hash))) {
+      // Where a host redirects index.html to its folder: no browser takes that for a page.
+      return response.redirected ? new Response(response.body, { headers: response.headers }) : response;
+    }
   }
   throw new Error(`${path} did not arrive whole`);
 }

@@ -1,14 +1,19 @@
 """The service worker's life, in Chromium: kept whole or not at all, offline, updated when told, mended."""
 
+import functools
 import hashlib
 import re
 import shutil
+import threading
 from collections import Counter
 from collections.abc import Callable, Iterator
+from http.server import ThreadingHTTPServer
 from pathlib import Path
 from typing import Any
 
 import pytest
+
+import server as web
 
 KIND = """kind => new Promise(resolve => {
   const channel = new MessageChannel();
@@ -243,3 +248,25 @@ def test_two_copies_on_one_host_keep_apart(
         page.goto(f"{server.url}{name}/")
         assert page.title() == "Headwater"
         assert state(page)["ready"]
+
+
+def test_a_host_that_redirects_the_page_to_its_folder_will_do(page: Any, dist: Path) -> None:
+    class Redirecting(web.Handler):
+        def do_GET(self) -> None:
+            if self.path == "/index.html":
+                self._reply(301, b"", {"Location": "/"}, True)
+            else:
+                super().do_GET()
+
+    policy = (dist / "policy.txt").read_text().strip()
+    handler = functools.partial(Redirecting, directory=str(dist), policy=policy, quiet=True)
+    running = ThreadingHTTPServer(("127.0.0.1", 0), handler)
+    threading.Thread(target=running.serve_forever, daemon=True).start()
+    try:
+        visit(page, f"http://localhost:{running.server_address[1]}/")
+        assert state(page)["ready"]
+        page.reload()
+        assert page.title() == "Headwater"
+    finally:
+        running.shutdown()
+        running.server_close()
