@@ -385,9 +385,12 @@ class Reckoning:
     def learned_ends(self) -> list[tuple[float, float, float] | None]:
         """By how much each end moves the low, middle and high quantile of ln S.
 
-        Each note's S is worked out again under each end; the quantiles follow the notes.
+        Each note's S is worked out again under each end; the quantiles follow the notes, in the same way for
+        any plan at this boat speed: as at wide open.
         """
-        known, still = self.known_at_plan, (0.0, 0.0, 0.0)
+        at, wide_open = self.centre, self.inputs["boat.wide_open_rpm"]
+        flow = suction.state(at.unit, at.head, at.density, wide_open, self.boat_speed).flow
+        known, still = self.known(self.boat_speed, flow / wide_open), (0.0, 0.0, 0.0)
         if self.fixed is not None or known.belief is None:
             return [still] * len(self.ends)
         low, middle, high = notes.followed(known.bounds, (LOW, MIDDLE, HIGH))
@@ -598,7 +601,7 @@ class Reckoning:
             sigma = min(sigma, self._blur(bound, slope, steps))
             if belief.chance_under(bound.x, sigma) <= CHANCE:
                 return bound.x, "proven"
-            x = belief.x_at_chance(CHANCE, sigma, bound.x)
+            x = belief.x_at_chance(CHANCE, sigma)
             if lower is None or x > lower.x:
                 break
         return x, "chance"

@@ -59,13 +59,10 @@ class Belief:
         """Chance that ln S lies under x, where x itself is known to one sigma."""
         return self._chance_and_density(x, sigma)[0]
 
-    def x_at_chance(self, chance: float, sigma: float, start: float) -> float:
-        """The x with this chance under it: :meth:`chance_under` solved by Newton's method.
-
-        :param start: where to begin
-        """
-        x = min(start, self.quantile(0.5))  # from where its logarithm falls steadily
-        for _ in range(12):
+    def x_at_chance(self, chance: float, sigma: float) -> float:
+        """The x with this chance under it: :meth:`chance_under` solved by Newton's method."""
+        x = self.quantile(chance)
+        for _ in range(20):
             under, density = self._chance_and_density(x, sigma)
             move = min(max(math.log(under / chance) * under / density, -2 * sigma), 2 * sigma + self.step)
             x -= move
