@@ -2,6 +2,7 @@
 
 import gzip
 import ssl
+import tempfile
 import threading
 import urllib.error
 import urllib.request
@@ -124,7 +125,10 @@ def test_nothing_answers_once_the_server_is_killed(server: Any) -> None:
         urllib.request.urlopen(server.url)
 
 
-def test_https_for_a_phone_in_the_same_network(dist: Path, capsys: pytest.CaptureFixture[str]) -> None:
+def test_https_for_a_phone_in_the_same_network(
+    dist: Path, tmp_path: Path, monkeypatch: pytest.MonkeyPatch, capsys: pytest.CaptureFixture[str]
+) -> None:
+    monkeypatch.setattr(tempfile, "tempdir", str(tmp_path))
     context = serve._certificate(["127.0.0.1"])
     authority = capsys.readouterr().out.strip().rpartition(" ")[2]
     running = web.make(dist, "127.0.0.1", 0, context)
