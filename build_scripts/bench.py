@@ -14,6 +14,7 @@ import tempfile
 import time
 import zipfile
 from collections.abc import Iterator
+from itertools import chain
 from pathlib import Path
 from typing import TYPE_CHECKING, Any, NamedTuple
 
@@ -208,7 +209,7 @@ def in_browser(dist: Path, starts: int) -> Iterator[Row]:
             stock_times.append(stock.start(stock_url))
     answered, painted = (statistics.median(column) for column in zip(*app_times, strict=True))
     whole = statistics.median(row[0] for row in stock_times)
-    print(f"offline start: app {answered:.0f} ms, painted {painted:.0f} ms; stock {whole:.0f} ms")
+    print(f"  (offline start: app {answered:.0f} ms, painted {painted:.0f} ms; stock {whole:.0f} ms)")
     yield Row("offline start / stock start", 0.5, answered / whole, "")
     yield Row("page painted / stock start", 0.15, painted / whole, "")
 
@@ -229,8 +230,21 @@ def in_worker(browser: Chromium, url: str, dist: Path) -> list[float]:
         return page.evaluate(ASK_WORKER, {**places, "cases": demo_cases()})
 
 
+def wrong_gos(cases: int) -> Iterator[Row]:
+    """A go that would let go too often, hunted in far more random cases than the tests try."""
+    sys.path.insert(0, str(ROOT / "tests" / "reference"))
+    from wrong_go import hunt
+
+    found = hunt(cases, seed=2)
+    print(
+        f"  ({found.tried} cases, {found.go} go; the worst of these fails in {found.worst:.1%} of its draws)"
+    )
+    yield Row("wrong gos in random cases", 0, len(found.wrong), "")
+
+
 def main() -> None:
     parser = argparse.ArgumentParser(description=__doc__)
+    parser.add_argument("--cases", type=int, default=5000, help="random cases in the hunt for wrong gos")
     parser.add_argument("--starts", type=int, default=9, help="cold offline starts of each app")
     options = parser.parse_args()
     machine.prepare("build,dev")
@@ -238,11 +252,11 @@ def main() -> None:
     import build
 
     dist = build.build()
-    rows = [*native(), *sizes(dist), *in_browser(dist, options.starts)]
     print(f"\n{'':<32}{'target':>10}{'measured':>12}")
-    for name, target, measured, unit in rows:
+    parts = native(), sizes(dist), in_browser(dist, options.starts), wrong_gos(options.cases)
+    for name, target, measured, unit in chain.from_iterable(parts):
         verdict = "" if measured <= target else "  over"
-        print(f"{name:<32}{target:>10g}{measured:>12.3g} {unit}{verdict}".rstrip())
+        print(f"{name:<32}{target:>10g}{measured:>12.3g} {unit}{verdict}".rstrip(), flush=True)
 
 
 if __name__ == "__main__":
