@@ -361,13 +361,8 @@ class _Answer:
                 lines["let_go"] = line(middle, "let_go", (middle - low, high - middle))
         flare = check.flare(known)
         if flare:
-            belief = notes.learn(known.flare_bounds) if flare.learned else known.belief
-            own = (0.0, 0.0)
-            if belief and check.fixed is None:
-                low, middle, high = (belief.quantile(share) for share in (LOW, MIDDLE, HIGH))
-                own = (middle - low, high - middle)
             rpm = check.rpm_at(flare.x, speed)
-            lines["flare"] = check.line(flare.x, speed, "flare", own, (0, 2), rpm, shared)
+            lines["flare"] = check.line(flare.x, speed, "flare", flare.own, (0, 2), rpm, shared)
         return lines
 
     def _lines(self) -> dict[str, Line]:
@@ -425,26 +420,27 @@ class _Answer:
     # Parts of the answer
 
     def _equivalents(self) -> list[dict[str, Any]]:
-        check, at, out = self.check, self.check.centre, []
-        for i, seen in enumerate(check.seen):
-            if not check.has_head:
-                break
+        """One row a note; without rpm where it was made at no known speed or where no head is left."""
+        check, at = self.check, self.check.centre
+        out: list[dict[str, Any]] = [
+            {
+                "note": i,
+                "outcome": note["outcome"],
+                "rpm_there": note["rpm"],
+                "rpm_here": None,
+                "low": None,
+                "high": None,
+            }
+            for i, note in enumerate(self.values["notes"])
+        ]
+        for i, seen in enumerate(check.seen if check.has_head else ()):
             rpm = check.rpm_at(check.xs[i], self.speed)
             line = self.lines.get("holding")
             if not (line and line.kind == "proven" and line.x == check.xs[i]):
                 state = suction.state(at.unit, at.head, at.density, rpm, self.speed)
                 own = SIGMAS * check.bounds(self.speed, state.flow / rpm)[i].sigma
                 line = check.line(check.xs[i], self.speed, seen.outcome, (own, own), i, rpm)
-            out.append(
-                {
-                    "note": seen.note,
-                    "outcome": seen.outcome,
-                    "rpm_there": seen.rpm,
-                    "rpm_here": rpm,
-                    "low": line.low,
-                    "high": line.high,
-                }
-            )
+            out[seen.note].update(rpm_here=rpm, low=line.low, high=line.high)
         return out
 
     def _facts(self, curve: Mapping[str, Any], equivalents: list[dict[str, Any]]) -> dict[str, Any]:
@@ -496,14 +492,11 @@ class _Answer:
         """The equivalent that leads the answer: the best held note's, else the lowest that did not hold."""
         check = self.check
         known = check.known_at_plan
-        for row, seen in zip(equivalents, check.seen, strict=False):
-            if known.proven and seen.note == check.seen[known.proven.note].note:
-                return row
-        rest = [
-            row
-            for row, seen in zip(equivalents, check.seen, strict=False)
-            if not seen.hint and seen.outcome != "held"
-        ]
+        if not check.has_head:
+            return None
+        if known.proven:
+            return equivalents[check.seen[known.proven.note].note]
+        rest = [equivalents[seen.note] for seen in check.seen if not seen.hint and seen.outcome != "held"]
         return min(rest, key=lambda row: row["rpm_here"]) if rest else None
 
     def _teach(self) -> dict[str, Any] | None:

@@ -96,6 +96,7 @@ class Flare(NamedTuple):
     """Where revs run up without letting go."""
 
     x: float  # ln S
+    own: tuple[float, float]  # step of x down and up by what was learned, over 0
     learned: bool  # from a flared note, else typical
 
 
@@ -368,16 +369,20 @@ class Reckoning:
         """The flare line; none where nothing draws it."""
         flared = [b for b in known.flare_bounds if self.seen[b.note].outcome == "flared"]
         if flared and self.fixed is None:
+            lowest = min(flared, key=lambda b: b.x)
+            note, reach = self.seen[lowest.note], SIGMAS * lowest.sigma
+            eased = seen_asked(self.centre, note._replace(rpm=note.rpm * notes.FLARE_EASE)) or lowest.x
             if any(b.below for b in known.flare_bounds):
-                return Flare(notes.learn(known.flare_bounds).quantile(MIDDLE), True)
-            note = self.seen[min(flared, key=lambda b: b.x).note]
-            eased = seen_asked(self.centre, note._replace(rpm=note.rpm * notes.FLARE_EASE))
-            return Flare(eased, True) if eased is not None else None
-        middle = self.limit(known, MIDDLE)
-        if middle is None or not (self.fixed is not None or known.lid):
+                low, middle, high = (notes.learn(known.flare_bounds).quantile(q) for q in (LOW, MIDDLE, HIGH))
+                if middle >= eased:  # a note that held far below does not lower the line
+                    return Flare(middle, (middle - low, high - middle), True)
+            return Flare(eased, (reach, reach), True)
+        limits = [x for x in (self.limit(known, q) for q in (LOW, MIDDLE, HIGH)) if x is not None]
+        if not limits or not (self.fixed is not None or known.lid):
             return None
-        typical = middle - 0.75 * math.log(notes.FLARE_RATIO)
-        return Flare(max(typical, known.proven.x) if known.proven else typical, False)
+        typical = limits[1] - 0.75 * math.log(notes.FLARE_RATIO)
+        line = max(typical, known.proven.x) if known.proven else typical
+        return Flare(line, (limits[1] - limits[0], limits[2] - limits[1]), False)
 
     # How the ends move things
 
@@ -617,12 +622,12 @@ class Reckoning:
             top = min(top, flare.x - EQUAL)
         if self.fixed is not None:
             return top
-        ceiling = [b.x for b in known.bounds if not b.hint and self.seen[b.note].outcome != "held"]
-        floor = [b.x for b in known.bounds if not b.hint and b.below]
-        if not ceiling or not floor:
-            return None
-        top = min(top, max(ceiling))
-        return top if top >= min(floor) else None
+        today = [b for b in known.bounds if not b.hint]
+        beneath = any(b.below for b in today)  # held or flared: the limit lies over it
+        above = any(
+            self.seen[b.note].outcome != "held" for b in today
+        )  # flared or let go: the line lies under it
+        return top if beneath and above else None
 
     def line(
         self,

@@ -81,4 +81,4 @@ def _inside(check: Reckoning) -> Decision:
         return Decision("go", "new", "holds", ["reserve"])
     if check.fixed is not None:
         why.append("no_reserve")
-    return Decision("caution", "", "", why or ["unknown"])
+    return Decision("caution", "", "", why or ["none_held" if check.today else "unknown"])

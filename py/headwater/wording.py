@@ -188,6 +188,7 @@ def _reason(code: str, facts: Facts, say: _Say) -> str:
         "no_head": "The pump has no head left here: the air is thin, the water warm or the shaft high.",
         "papers": "Power and rpm are out of papers. Read the tach wide open, then plan in rpm.",
         "unknown": "No note of this pump as it is now.",
+        "none_held": "No note says that she held so much.",
     }[code]
 
 
@@ -511,6 +512,11 @@ def _ledger_row(row: Mapping[str, Any], say: _Say) -> dict[str, str]:
 
 def _equivalent(row: Mapping[str, Any], say: _Say) -> dict[str, Any]:
     did = {"held": "Held", "flared": "Revs ran up at", "let_go": "Let go at"}[row["outcome"]]
+    if row["rpm_here"] is None:
+        return {
+            "note": row["note"],
+            "text": f"{did} {say.number(row['rpm_there'], 'rotation')}: no telling here.",
+        }
     here = f"{say.rpm(row['rpm_here'])} here, {say.span(row['low'], row['high'], 'rotation')}"
     return {"note": row["note"], "text": f"{did} {say.number(row['rpm_there'], 'rotation')}: {here}."}
 

@@ -88,6 +88,13 @@ def test_new_ground_needs_a_note_on_each_side_and_its_reserve():
     assert check([held], {"rpm": 3350})["verdict"] == "caution"
 
 
+def test_well_under_where_the_revs_ran_up_is_go_though_nothing_was_held():
+    found = check([note("flared", 3900)], {"rpm": 3400})
+    assert ("go", "new") == (found["verdict"], found["ground"])
+    assert check([note("flared", 3900)], {"rpm": 3600})["verdict"] == "caution"
+    assert check([GONE], {"rpm": 2000})["verdict"] == "caution"
+
+
 def test_past_a_learned_flare_line_is_caution():
     found = check([note("held", 3300), note("flared", 3700), GONE], {"rpm": 3700})
     assert ("caution", "new") == (found["verdict"], found["ground"])

@@ -1,0 +1,32 @@
+"""Every public relation says what it takes, in which unit, and where it is from."""
+
+import inspect
+import re
+
+import pytest
+
+from headwater import air, jet, suction, water
+
+RELATIONS = [
+    pytest.param(function, id=f"{module.__name__}.{name}")
+    for module in (water, air, jet, suction)
+    for name, function in inspect.getmembers(module, inspect.isfunction)
+    if function.__module__ == module.__name__ and not name.startswith("_")
+]
+
+
+def test_relations_are_found():
+    assert len(RELATIONS) >= 20
+
+
+@pytest.mark.parametrize("function", RELATIONS)
+def test_docstring_names_each_parameter_and_its_source_with_a_mark(function):
+    text = inspect.getdoc(function) or ""
+    parameters = [
+        name for name in inspect.signature(function).parameters if name not in ("xp", "unit", "state")
+    ]
+    documented = re.findall(r":param (\w+):", text)
+    if function is not jet.unit:
+        documented = [name for name in documented if name not in ("unit", "state")]
+    assert parameters == documented
+    assert re.search(r"^Source: .*\[[VSPMD]\]", text.replace("\n    ", " "), re.MULTILINE)
