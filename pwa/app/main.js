@@ -21,13 +21,14 @@ let answered = false;
 let saving;
 
 const model = () => ({ own, demo, sent })[mode];
-const form = bindForm({ model, changed, convert });
-const offline = register({ onState: paintOffline, onWaiting: offerUpdate });
+// First of all: Python takes longest to start.
 const core = connect(data.links, {
   onProgress() {},
   onReady: () => at("fault").toggleAttribute("hidden", true),
   onFatal: (message, again) => fault(again ? screen.fatal : `${screen.fatal_end} (${message})`, !again),
 });
+const form = bindForm({ model, changed, convert });
+const offline = register({ onState: paintOffline, onWaiting: offerUpdate });
 
 /** The core turns a typed figure into another unit. @param {string} field @param {string} text @param {string} unit */
 async function convert(field, text, unit) {
