@@ -13,7 +13,7 @@ from typing import TYPE_CHECKING
 import pytest
 
 if TYPE_CHECKING:
-    from playwright.sync_api import Browser
+    from playwright.sync_api import Browser, Playwright
 
 ROOT = Path(__file__).resolve().parent.parent
 SCRIPTS = ROOT / "build_scripts"
@@ -102,18 +102,24 @@ def get(server: Server) -> Callable[..., urllib.request.addinfourl]:
 
 
 @pytest.fixture(scope="session")
-def chromium() -> "Iterator[Browser]":
-    """Chromium, by Playwright; each test opens a context of its own."""
+def playwright() -> "Iterator[Playwright]":
+    """Playwright, one for the whole run."""
     from playwright.sync_api import sync_playwright
 
+    with sync_playwright() as playwright:
+        yield playwright
+
+
+@pytest.fixture(scope="session")
+def chromium(playwright: "Playwright") -> "Iterator[Browser]":
+    """Chromium, by Playwright; each test opens a context of its own."""
     import machine
 
-    with sync_playwright() as playwright:
-        browser = playwright.chromium.launch(
-            executable_path=machine.browsers()["chromium"], args=list(CHROMIUM_OPTIONS)
-        )
-        yield browser
-        browser.close()
+    browser = playwright.chromium.launch(
+        executable_path=machine.browsers()["chromium"], args=list(CHROMIUM_OPTIONS)
+    )
+    yield browser
+    browser.close()
 
 
 @pytest.hookimpl(trylast=True)
