@@ -2,7 +2,7 @@
 
 import json
 import math
-from collections.abc import Callable, Iterable, Mapping
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from typing import Any
 
 from headwater import air, fields, jet, notes, share, suction, verdict, water, wording
@@ -24,7 +24,6 @@ from headwater.doubt import (
     Setting,
     setting,
     spread,
-    sumprod,
 )
 from headwater.errors import BadReading
 from headwater.fields import FIELD, Readings
@@ -246,7 +245,7 @@ def _lagrange(at: float) -> tuple[float, ...]:
     )
 
 
-_CURVE_SHARES = [(speed, _lagrange(speed)) for speed in CURVE_SPEEDS]
+_CURVE_SHARES = [_lagrange(speed) for speed in CURVE_SPEEDS]
 
 
 class _Answer:
@@ -362,7 +361,13 @@ class _Answer:
         flare = check.flare(known)
         if flare:
             rpm = check.rpm_at(flare.x, speed)
-            lines["flare"] = check.line(flare.x, speed, "flare", flare.own, (0, 2), rpm, shared)
+            if flare.learned or "let_go" not in lines:
+                lines["flare"] = check.line(flare.x, speed, "flare", flare.own, (0, 2), rpm, shared)
+            else:  # typical: it lies as surely as the let-go line that it is drawn from
+                gone, share = lines["let_go"], rpm / lines["let_go"].rpm
+                lines["flare"] = gone._replace(
+                    rpm=rpm, x=flare.x, kind="flare", low=gone.low * share, high=gone.high * share
+                )
         return lines
 
     def _lines(self) -> dict[str, Line]:
@@ -385,21 +390,28 @@ class _Answer:
         return curve
 
     def _curve_line(self, nodes: list[Line]) -> tuple[dict[str, list[float]], dict[str, list[float]]]:
-        rpm: dict[str, list[float]] = {"value": [], "low": [], "high": []}
-        power: dict[str, list[float]] = {"value": [], "low": [], "high": []}
-        ends = [(n.x, n.low / n.rpm, n.high / n.rpm, n.power_low, n.power_high) for n in nodes]
-        columns = list(zip(*ends, strict=True))
-        for speed, shares in _CURVE_SHARES:
-            x, rpm_low, rpm_high, power_low, power_high = (sumprod(shares, column) for column in columns)
-            value = self.check.rpm_at(x, speed, suction.FEW_STEPS)
-            at_rpm = self.power(value)
-            rpm["value"].append(value)
-            rpm["low"].append(value * rpm_low)
-            rpm["high"].append(value * rpm_high)
-            power["value"].append(at_rpm)
-            power["low"].append(at_rpm * power_low)
-            power["high"].append(at_rpm * power_high)
-        return rpm, power
+        def between(values: Sequence[float]) -> list[float]:
+            first, second, third, fourth = values
+            return [a * first + b * second + c * third + d * fourth for a, b, c, d in _CURVE_SHARES]
+
+        at, full = self.check.centre, self.power(1.0)
+        limits = [math.exp(x) for x in between([node.x for node in nodes])]
+        rpm = [
+            float(suction.rpm_at(at.unit, at.head, at.density, speed, s, suction.ONE_STEP))
+            for speed, s in zip(CURVE_SPEEDS, limits, strict=True)
+        ]
+        power = [full * value**3 for value in rpm]
+
+        def line(values: list[float], low: list[float], high: list[float]) -> dict[str, list[float]]:
+            return {
+                "value": values,
+                "low": [value * share for value, share in zip(values, low, strict=True)],
+                "high": [value * share for value, share in zip(values, high, strict=True)],
+            }
+
+        low, high = between([n.low / n.rpm for n in nodes]), between([n.high / n.rpm for n in nodes])
+        weak, strong = between([n.power_low for n in nodes]), between([n.power_high for n in nodes])
+        return line(rpm, low, high), line(power, weak, strong)
 
     def _speed_for(self, rpm: float, curve: Mapping[str, Any]) -> float | None:
         """Boat speed from which an rpm is a go; 0 at rest, none where it never is."""

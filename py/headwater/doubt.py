@@ -560,7 +560,8 @@ class Reckoning:
                 found,
                 self._hold(known, boat_speed, math.log(suction.speed_asked(state)), slope, steps),
             )
-            if found is None or (abs(found.rpm / rpm - 1) < EQUAL / 10 and same == 0.0):
+            settled = found is not None and abs(found.rpm / rpm - 1) < EQUAL / 10
+            if found is None or (settled and (same == 0.0 or found.kind == "proven")):
                 return found
             if abs(found.rpm / rpm - 1) < EQUAL:
                 same = 0.0  # settled: once more with the doubt of this very rpm

@@ -12,7 +12,8 @@ from headwater.jet import GRAVITY, Unit
 S_FROM_US = 0.01936287  # metric S over US S (rev/min, US gal/min, ft), from the units' definitions [V]
 S_FROM_DIMENSIONLESS = 52.919  # metric S over omega sqrt(Q)/(g NPSH)^0.75 [V]
 STEPS = 5  # of the solution for rpm at a speed; at rest the first is exact
-FEW_STEPS = 3  # for bands and curves
+FEW_STEPS = 3  # for bands: within 1e-4
+ONE_STEP = 1  # for curves: within 1e-3
 
 
 class State(NamedTuple):
@@ -106,7 +107,7 @@ def rpm_at(
     :param density: of the water [kg/m3]
     :param boat_speed: V_0 through the water [m/s]
     :param suction_specific_speed: S, metric
-    :param steps: of the solution; with :data:`FEW_STEPS` it is within 1e-4
+    :param steps: of the solution; fewer leave the error that :data:`FEW_STEPS` says
     :returns: [1/min]
     Source: NPSHA = NPSHR solved for rpm; closed form at rest, else Newton's method in logarithms [D].
     """
