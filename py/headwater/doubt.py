@@ -398,7 +398,7 @@ class Reckoning:
         known, still = self.known(self.boat_speed, flow / wide_open), (0.0, 0.0, 0.0)
         if self.fixed is not None or known.belief is None:
             return [still] * len(self.ends)
-        low, middle, high = notes.followed(known.bounds, (LOW, MIDDLE, HIGH))
+        low, middle, high = notes.followed(known.belief, known.bounds, (LOW, MIDDLE, HIGH))
         moved: list[tuple[float, float, float] | None] = []
         for end in self.ends:
             xs = [end.xs[b.note] for b in known.bounds]

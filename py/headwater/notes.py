@@ -122,20 +122,41 @@ def learn(bounds: Iterable[Bound]) -> Belief:
     return Belief(bottom + first * step, step, [weight + 1e-300 for weight in weights])
 
 
-def followed(bounds: Sequence[Bound], shares: Sequence[float]) -> list[list[float]]:
-    """How far each quantile of the belief follows each bound, d quantile / d x, by learning with it moved.
+def followed(belief: Belief, bounds: Sequence[Bound], shares: Sequence[float]) -> list[list[float]]:
+    """How far each quantile of a belief follows each bound it was learned from, d quantile / d x.
 
     :param shares: of the quantiles
     :returns: for each quantile one number a bound
+    Source: derivative of the posterior's distribution function over its density [D].
     """
+    start, step, weights, below = belief.start, belief.step, belief.weights, belief.below
+    last = len(weights) - 1
+    cells = []  # where each quantile lies: its cell, how much of it is under the quantile, the weight there
+    for share in shares:
+        cell = (belief.quantile(share) - start) / step + 0.5
+        whole = min(max(int(cell), 0), last)
+        part = cell - whole
+        beside = weights[min(whole + 1, last) if part > 0.5 else max(whole - 1, 0)]
+        weight = weights[whole] + abs(part - 0.5) * (beside - weights[whole])
+        cells.append((share, whole, part, weight))
     rows: list[list[float]] = [[] for _ in shares]
-    for i, bound in enumerate(bounds):
-        down, up = (
-            learn([*bounds[:i], bound._replace(x=bound.x + side * bound.sigma), *bounds[i + 1 :]])
-            for side in (-1, 1)
-        )
-        for row, share in zip(rows, shares, strict=True):
-            row.append((up.quantile(share) - down.quantile(share)) / (2 * bound.sigma))
+    for bound in bounds:
+        low = max(math.ceil((bound.x - _WINDOW * bound.sigma - start) / step), 0)
+        high = min(math.floor((bound.x + _WINDOW * bound.sigma - start) / step), last)
+        side = 1.0 if bound.below else -1.0
+        # By how much each cell's likelihood falls as the bound moves up, on end.
+        z, dz = (start + low * step - bound.x) / bound.sigma, step / bound.sigma
+        pulls, pulled = [], [0.0]
+        for k in range(low, high + 1):
+            lost = side * weights[k] * exp(-0.5 * z * z) / (erfc(-side * z * _ROOT_HALF) + 1e-300)
+            pulls.append(lost)
+            pulled.append(pulled[-1] + lost)
+            z += dz
+        scale = math.sqrt(2 / math.pi) * step / bound.sigma
+        for row, (share, whole, part, weight) in zip(rows, cells, strict=True):
+            k = min(max(whole - low, 0), len(pulls))
+            under = pulled[k] + (part * pulls[k] if whole >= low and k < len(pulls) else 0.0)
+            row.append(scale * (under - share * pulled[-1]) / weight)
     return rows
 
 
