@@ -179,13 +179,9 @@ function fault(text, again) {
 /** @param {import("../sw/register.js").State} state */
 function paintOffline(state) {
   const version = `${screen.version} ${data.version}`;
-  const words = state.ready
-    ? `${screen.offline_ready} · ${version}`
-    : state.fault === "none"
-      ? screen.offline_none
-      : state.fault
-        ? screen.offline_install
-        : screen.offline_broken;
+  const faults = { none: screen.offline_none, quota: screen.offline_quota, install: screen.offline_install };
+  const broken = state.fault ? faults[state.fault] : screen.offline_broken;
+  const words = state.ready ? `${screen.offline_ready} · ${version}` : broken;
   at("offline").textContent = words;
   at("offline").dataset.ready = String(Boolean(state.ready));
   at("repair").hidden = Boolean(state.ready) || state.fault === "none" || !navigator.onLine;

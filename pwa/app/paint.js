@@ -86,13 +86,13 @@ function ledgerRow(row) {
   return made;
 }
 
-/** @param {{title: string, symbol: string, formula: string, numbers: string, result: string, with?: string, source: string, mark: string}} row */
+/** @param {{title: string, symbol: string, formula: string, numbers: string, result: string, span: string, source: string, mark: string}} row */
 function workingRow(row) {
   const value = make("dd");
   value.append(make("b", row.result));
-  if (row.numbers) value.append(make("span", `${screen.between} ${row.numbers}`, "span"));
+  if (row.span) value.append(make("span", `${screen.between} ${row.span}`, "span"));
   value.append(make("code", `${row.symbol ? `${row.symbol} = ` : ""}${row.formula}`));
-  if (row.with) value.append(make("code", row.with));
+  if (row.numbers) value.append(make("code", `= ${row.numbers}`));
   value.append(make("span", `${screen.working_source}: ${row.source} · ${screen.working_mark} ${row.mark}`, "source"));
   return [make("dt", row.title), value];
 }

@@ -129,7 +129,7 @@ def followed(belief: Belief, bounds: Sequence[Bound], shares: Sequence[float]) -
     :returns: for each quantile one number a bound
     Source: derivative of the posterior's distribution function over its density [D].
     """
-    start, step, weights, below = belief.start, belief.step, belief.weights, belief.below
+    start, step, weights = belief.start, belief.step, belief.weights
     last = len(weights) - 1
     cells = []  # where each quantile lies: its cell, how much of it is under the quantile, the weight there
     for share in shares:

@@ -284,7 +284,7 @@ _LEDGER = {
     "margin": "leaves",
     "available": "leaves for the impeller",
 }
-# Title, symbol, formula, value, quantity it is shown in, source.
+# Title, symbol, formula, value, quantity it is shown in, source; and the formula with its figures.
 _WORKING = (
     (
         "Air pressure at the water",
@@ -324,6 +324,7 @@ _WORKING = (
         "npsh_available",
         "head",
         "npsh",
+        "{air} - {boiling} {depth} + {ram} - {intake} m",
     ),
     (
         "Suction specific speed asked",
@@ -332,6 +333,7 @@ _WORKING = (
         "suction_specific_speed_asked",
         "plain",
         "npsh",
+        "{rpm} sqrt({flow_rate})/{npsh_available}^0.75",
     ),
     (
         "Suction specific speed of this pump",
@@ -341,9 +343,17 @@ _WORKING = (
         "plain",
         "learned",
     ),
-    ("Head required", "NPSHR", "(N sqrt(Q)/S)^(4/3)", "npsh_required", "head", "npsh"),
-    ("Margin", "", "NPSHA - NPSHR", "margin", "head", "npsh"),
-    ("Ratio", "", "NPSHA/NPSHR", "ratio", "plain", "npsh"),
+    (
+        "Head required",
+        "NPSHR",
+        "(N sqrt(Q)/S)^(4/3)",
+        "npsh_required",
+        "head",
+        "npsh",
+        "({rpm} sqrt({flow_rate})/{suction_specific_speed})^(4/3)",
+    ),
+    ("Margin", "", "NPSHA - NPSHR", "margin", "head", "npsh", "{npsh_available} - {npsh_required} m"),
+    ("Ratio", "", "NPSHA/NPSHR", "ratio", "plain", "npsh", "{npsh_available}/{npsh_required}"),
     (
         "Static pressure ahead of the impeller",
         "p_1",
@@ -351,6 +361,7 @@ _WORKING = (
         "inlet_static_pressure",
         "pressure",
         "npsh",
+        "{water_density} (9.80665 x {npsh_available} - {impeller_inlet_speed}^2/2) + {vapor_pressure} Pa",
     ),
 )
 _TICKS = (100.0, 250.0, 500.0, 1000.0, 2000.0)  # steps of the gauge board, rpm
@@ -393,7 +404,7 @@ def sheet(answer: Mapping[str, Any], units: Units) -> dict[str, Any]:
         "ledger": [_ledger_row(row, say) for row in answer["ledger"]],
         "movers": [{"field": row["field"], "text": row["text"]} for row in answer["movers"]],
         "equivalents": [_equivalent(row, say) for row in answer["equivalents"]],
-        "working": [row for row in (_working_row(entry, values, say) for entry in _WORKING) if row],
+        "working": _working(answer, say),
         "curve": _curve(answer["curve"], say),
     }
 
@@ -521,30 +532,53 @@ def _equivalent(row: Mapping[str, Any], say: _Say) -> dict[str, Any]:
     return {"note": row["note"], "text": f"{did} {say.number(row['rpm_there'], 'rotation')}: {here}."}
 
 
-def _working_row(entry: tuple[str, ...], values: Mapping[str, Any], say: _Say) -> dict[str, str] | None:
-    title, symbol, formula, name, quantity, source = entry
-    value = values[name]
-    if value is None:
-        return None
+def _working(answer: Mapping[str, Any], say: _Say) -> list[dict[str, str]]:
+    """Each relation with its formula, figures, source and mark."""
+    values = answer["values"]
+    figures = {
+        name: f"{row['value']:.5g}" for name, row in values.items() if row and row["value"] is not None
+    }
+    head = {row["term"]: row["value"] for row in answer["ledger"]}
+    figures |= {term: f"{abs(value):.3f}" for term, value in head.items()}
+    figures["depth"] = f"{'-' if head['depth'] < 0 else '+'} {abs(head['depth']):.3f}"
+    asked = values["suction_specific_speed_asked"]
+    if asked:  # of the impeller, behind the gear
+        available, flow = values["npsh_available"]["value"], values["flow_rate"]["value"]
+        figures["rpm"] = f"{asked['value'] * available**0.75 / flow**0.5:.5g}"
+    rows = []
+    for title, symbol, formula, name, quantity, source, *inserted in _WORKING:
+        value = values[name]
+        if value is None:
+            continue
+        result, span = _working_figures(value, quantity, say)
+        template = inserted[0] if inserted else ""
+        known = all(key in figures for key in re.findall(r"{(\w+)}", template))
+        rows.append(
+            {
+                "title": title,
+                "symbol": symbol,
+                "formula": formula,
+                "numbers": template.format(**figures) if known else "",
+                "result": result,
+                "span": span,
+                "source": SOURCES[source].text,
+                "mark": value["mark"],
+            }
+        )
+    return rows
+
+
+def _working_figures(value: Mapping[str, Any], quantity: str, say: _Say) -> tuple[str, str]:
+    """A value and its span, in words."""
 
     def show(number: float) -> str:
         return f"{number:.3g}" if quantity == "plain" else say.show(number, quantity)
 
     low, middle, high = (value[part] for part in ("low", "value", "high"))
     span = f"{show(low)} to {show(high)}" if low is not None and high is not None else ""
-    if middle is None:
-        middle_text = f"at least {show(low)}" if low is not None else f"at most {show(high)}"
-    else:
-        middle_text = show(middle)
-    return {
-        "title": title,
-        "symbol": symbol,
-        "formula": formula,
-        "numbers": span,
-        "result": middle_text,
-        "source": SOURCES[source].text,
-        "mark": value["mark"],
-    }
+    if middle is not None:
+        return show(middle), span
+    return f"at least {show(low)}" if low is not None else f"at most {show(high)}", span
 
 
 def _curve(curve: Mapping[str, Any], say: _Say) -> dict[str, Any]:
@@ -616,10 +650,11 @@ SCREEN = {
     "welcome_go": "Set up my boat",
     "last": "Last answer",
     "last_stale": "Not fresh.",
-    "offline_not": "Not yet ready offline",
+    "offline_not": "Getting ready for offline use",
     "offline_ready": "Ready offline",
     "offline_broken": "Not ready offline: files are missing.",
     "offline_install": "Not ready offline: the download did not arrive whole. It is tried again next time.",
+    "offline_quota": "Not ready offline: this phone has no room left. Free some, then fetch again.",
     "offline_none": "This browser cannot keep the app offline.",
     "repair": "Fetch them again",
     "update": "A newer version is here.",
