@@ -30,6 +30,7 @@ from headwater.fields import FIELD, Readings
 from headwater.jet import GRAVITY
 from headwater.notes import Bound
 from headwater.suction import State
+from headwater.units import QUANTITIES as UNITS
 
 CONTRACT = 1
 CURVE_SPEEDS = [float(v) for v in range(26)]  # m/s
@@ -47,13 +48,13 @@ _COEFFICIENTS = (
     "boat.pump_efficiency",
     "boat.driveline_efficiency",
 )
-# What the movers try, and by how much, in SI.
+# What the movers try, and by how much: a round step in the person's own unit, by quantity and unit.
 _MOVER_STEPS = {
-    "place.altitude": (300.0, "m"),
-    "place.station_pressure": (-1000.0, "Pa"),
-    "place.water_temperature": (5.0, "K"),
-    "boat.shaft_depth": (0.05, "m"),
-    "plan.boat_speed": (2.0, "m/s"),
+    "place.altitude": ("altitude", {"m": 300.0, "ft": 1000.0}, "m"),
+    "place.station_pressure": ("pressure", {"hPa": -10.0, "inHg": -0.3}, "Pa"),
+    "place.water_temperature": ("temperature_step", {"C": 5.0, "F": 10.0}, "K"),
+    "boat.shaft_depth": ("length", {"m": 0.05, "in": 2.0}, "m"),
+    "plan.boat_speed": ("speed", {"km/h": 10.0, "mph": 5.0, "kn": 5.0}, "m/s"),
 }
 
 
@@ -750,7 +751,9 @@ class _Answer:
             return []
         check, (rpm, x, *_) = self.check, self.held_to
         out = []
-        for key, (step, unit) in _MOVER_STEPS.items():
+        for key, (quantity, amounts, unit) in _MOVER_STEPS.items():
+            symbol = self.units[quantity] if self.units[quantity] in amounts else next(iter(amounts))
+            step = amounts[symbol] * UNITS[quantity][symbol].factor
             part, _, name = key.partition(".")
             if name not in self.values[part] or (name == "altitude" and "station_pressure" in self.place):
                 continue
@@ -771,7 +774,7 @@ class _Answer:
                     "step": step,
                     "unit": unit,
                     "holding_rpm_change": change,
-                    "text": wording.mover(key, step, change, self.units),
+                    "text": wording.mover(key, step, change, {**self.units, quantity: symbol}),
                 }
             )
         return sorted(out, key=lambda row: -abs(row["holding_rpm_change"]))

@@ -402,7 +402,11 @@ def sheet(answer: Mapping[str, Any], units: Units) -> dict[str, Any]:
         "cautions": answer["cautions"],
         "gauge": _gauge(values, say),
         "ledger": [_ledger_row(row, say) for row in answer["ledger"]],
-        "movers": [{"field": row["field"], "text": row["text"]} for row in answer["movers"]],
+        "movers": [
+            {"field": row["field"], "text": row["text"]}
+            for row in answer["movers"]
+            if abs(row["holding_rpm_change"]) >= 1  # less is no news
+        ],
         "equivalents": [_equivalent(row, say) for row in answer["equivalents"]],
         "working": _working(answer, say),
         "curve": _curve(answer["curve"], say),
