@@ -10,10 +10,15 @@ import time
 from pathlib import Path
 
 sys.path.insert(0, str(Path(__file__).parent))
+import machine
+
+if __name__ == "__main__":  # before what only the venv has is imported
+    machine.prepare("build")
+    machine.in_venv(__file__)
+
 import bake
 import bundle
 import icons
-import machine
 import pack
 import page
 from machine import CACHE, PWA, ROOT
@@ -65,8 +70,6 @@ def named_by_content(file: Path, folder: Path) -> Path:
 
 
 if __name__ == "__main__":
-    machine.prepare("build")
-    machine.in_venv(__file__)
     try:
         build()
     except subprocess.CalledProcessError as error:

@@ -17,6 +17,7 @@ let sent = empty();
 /** @type {Mode} */
 let mode = "own";
 let answered = false;
+let turns = 0; // of questions: an answer goes deeper only while no newer one was asked
 /** @type {ReturnType<typeof setTimeout> | undefined} */
 let saving;
 
@@ -63,14 +64,22 @@ async function check() {
     form.showErrors([]);
     return;
   }
-  const reply = await core.ask({ ask: "check", case: caseOf(model()), units: model().units }).catch(() => null);
-  if (!reply || asked !== mode) return;
-  paintSheet(reply.sheet, goTo);
-  form.showErrors(reply.sheet.errors);
-  form.showOthers(reply.sheet.others);
-  paintLast(undefined);
-  if (!answered) offline.ran();
-  answered = true;
+  const question = { ask: "check", case: caseOf(model()), units: model().units };
+  const turn = (turns += 1);
+  at("answer").dataset.settled = "false";
+  let reply;
+  for (const depth of [0, 1, 2]) {
+    reply = await core.ask({ ...question, depth }).catch(() => null);
+    if (!reply || asked !== mode || turn !== turns) return;
+    paintSheet(reply.sheet, goTo);
+    form.showErrors(reply.sheet.errors);
+    form.showOthers(reply.sheet.others);
+    paintLast(undefined);
+    if (!answered) offline.ran();
+    answered = true;
+    if (!reply.sheet.waits && !(reply.sheet.launch && !reply.sheet.launch.done)) break;
+  }
+  at("answer").dataset.settled = "true";
   if (mode === "sent") at("sent-state").textContent = screen.sent_checked;
   if (mode === "own" && reply.sheet.state) {
     const place = own.readings["place.label"]?.text ?? "";

@@ -28,7 +28,7 @@ function say(id, text) {
 export function paintSheet(sheet, goTo) {
   const answer = at("answer");
   const wrong = sheet.errors.length > 0;
-  answer.dataset.state = wrong ? "none" : sheet.state;
+  answer.dataset.state = wrong ? "none" : (sheet.state ?? "none");
   say("headline", sheet.headline);
   say("lead", sheet.lead ?? "");
   at("below").hidden = wrong;
@@ -48,9 +48,10 @@ export function paintSheet(sheet, goTo) {
     at("lines").replaceChildren();
     return;
   }
-  const first = sheet.lines.filter((/** @type {Line} */ row) => row.first);
+  const first = [...sheet.lines, ...(sheet.launch?.lines ?? [])].filter((/** @type {Line} */ row) => row.first);
   const rest = sheet.lines.filter((/** @type {Line} */ row) => !row.first);
   at("lines").replaceChildren(...first.map(line));
+  paintLaunch(sheet.launch);
   at("more-lines").replaceChildren(...rest.map(line));
   drawGauge(at("gauge"), sheet.gauge);
   say("ground", sheet.ground);
@@ -61,7 +62,23 @@ export function paintSheet(sheet, goTo) {
   list("movers", sheet.movers.map((/** @type {{text: string}} */ row) => row.text));
   at("ledger").replaceChildren(...sheet.ledger.map(ledgerRow));
   at("working").replaceChildren(...sheet.working.flatMap(workingRow));
-  paintCurve(sheet.curve);
+  table("curve", sheet.curve.head, sheet.curve.rows);
+}
+
+/** @param {any} launch */
+function paintLaunch(launch) {
+  at("launch").hidden = !launch;
+  if (!launch) return;
+  at("launch-way").textContent = launch.way ? `: ${launch.way}` : "";
+  at("abort").textContent = launch.abort;
+  at("heaviest").textContent = launch.heaviest;
+  table("schedule", launch.schedule.head, launch.schedule.rows);
+  table("ways", [], launch.ways);
+  at("remedies-wait").hidden = launch.done;
+  at("help").hidden = launch.done && launch.remedies.length === 0;
+  at("remedies").replaceChildren(...launch.remedies.map((/** @type {string} */ text) => make("li", text)));
+  const rest = launch.lines.filter((/** @type {Line} */ row) => !row.first);
+  at("launch-lines").replaceChildren(...rest.map(line));
 }
 
 /** @typedef {{key: string, first: boolean, label: string, value: string, span: string, aside: string}} Line */
@@ -97,19 +114,19 @@ function workingRow(row) {
   return [make("dt", row.title), value];
 }
 
-/** @param {{head: string[], rows: string[][]}} curve */
-function paintCurve(curve) {
+/** @param {string} id @param {string[]} titles @param {string[][]} lines */
+function table(id, titles, lines) {
   const head = make("tr");
   head.append(
-    ...curve.head.map((text) => {
+    ...titles.map((text) => {
       const cell = make("th", text);
       cell.setAttribute("scope", "col");
       return cell;
     }),
   );
-  const rows = curve.rows.map(([speed, ...cells]) => {
+  const rows = lines.map(([title, ...cells]) => {
     const row = make("tr");
-    const first = make("th", speed);
+    const first = make("th", title);
     first.setAttribute("scope", "row");
     row.append(first, ...cells.map((text) => make("td", text)));
     return row;
@@ -118,7 +135,7 @@ function paintCurve(curve) {
   thead.append(head);
   const tbody = make("tbody");
   tbody.append(...rows);
-  at("curve").replaceChildren(thead, tbody);
+  at(id).replaceChildren(...(titles.length ? [thead] : []), tbody);
 }
 
 /** The last answer comes back small and dated, never as a fresh one. @param {import("./store.js").Last | undefined} last */

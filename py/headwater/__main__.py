@@ -105,9 +105,9 @@ def _words(sheet: dict[str, Any]) -> list[str]:
             out += _wrap(f"{row['field']}: {row['text']}", "  ")
         return out
     out += ["", *_wrap(sheet["lead"]), ""]
-    for row in sheet["lines"]:
-        span = f"({row['span']})" if row["span"] else ""
-        out.append(f"  {row['label']:<24}{row['value']:>12}  {span:<18} {row['aside']}".rstrip())
+    out += [_line(row) for row in sheet["lines"]]
+    if sheet["launch"]:
+        out += _launch_words(sheet["launch"])
     out += ["", *_wrap(sheet["ground"])]
     for row in sheet["reasons"]:
         out += _wrap(row["text"])
@@ -125,6 +125,29 @@ def _words(sheet: dict[str, Any]) -> list[str]:
     out += ["", "Head at the pump:"]
     out += [f"  {row['sign']} {row['value']:>10}  {row['term']}" for row in sheet["ledger"]]
     return [*out, "", sheet["lets_go"], sheet["not_checked"]]
+
+
+def _line(row: dict[str, Any]) -> str:
+    span = f"({row['span']})" if row["span"] else ""
+    return f"  {row['label']:<24}{row['value']:>12}  {span:<18} {row['aside']}".rstrip()
+
+
+def _launch_words(launch: dict[str, Any]) -> list[str]:
+    """The launch as plain text."""
+    out = ["", f"The launch{', ' if launch['way'] else ''}{launch['way']}:"]
+    out += [_line(row) for row in launch["lines"]]
+    schedule = launch["schedule"]
+    out += ["", "  " + "".join(f"{head:>14}" for head in schedule["head"])]
+    out += ["  " + "".join(f"{cell:>14}" for cell in row) for row in schedule["rows"]]
+    for text in (launch["abort"], launch["heaviest"]):
+        out += _wrap(text, "  ")
+    if launch["ways"]:
+        out += ["", "Both ways:", *(f"  {name:<6}{state:<9}{room}" for name, state, room in launch["ways"])]
+    if launch["remedies"]:
+        out += ["", "What would help, the cheapest first:"]
+        for text in launch["remedies"]:
+            out += _wrap(text, "  ")
+    return out
 
 
 def _wrap(text: str, indent: str = "") -> list[str]:

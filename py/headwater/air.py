@@ -11,7 +11,7 @@ LAPSE_RATE = 0.0065  # K/m, ISO 2533
 EARTH_RADIUS = 6_356_766.0  # m, US Standard Atmosphere 1976
 _EXPONENT = 5.2558761  # g M/(R L), US Standard Atmosphere 1976
 _ALTIMETER_EXPONENT = 0.1902632  # R L/(g M) as ICAO Doc 7488 rounds it
-_GAS_DRY, _GAS_VAPOR = 287.042, 461.524  # J/(kg K)
+GAS_CONSTANT, _GAS_VAPOR = 287.042, 461.524  # J/(kg K)
 
 
 def geopotential_height(altitude: Any) -> Any:
@@ -54,6 +54,16 @@ def standard_temperature(altitude: Any) -> Any:
     return STANDARD_TEMPERATURE - LAPSE_RATE * geopotential_height(altitude)
 
 
+def temperature_at_pressure(pressure: Any) -> Any:
+    """Air temperature of the standard atmosphere where it has a pressure.
+
+    :param pressure: [Pa]
+    :returns: [K]
+    Source: US Standard Atmosphere 1976 / ISO 2533, solved for temperature [V].
+    """
+    return STANDARD_TEMPERATURE * (pressure / STANDARD_PRESSURE) ** (1 / _EXPONENT)
+
+
 def station_pressure(altimeter_setting: Any, elevation: Any) -> Any:
     """Pressure at the water from a barometer that has been reduced to sea level (QNH).
 
@@ -89,4 +99,4 @@ def density(pressure: Any, temperature: Any, humidity: Any, xp: Any = math) -> A
     Source: ideal gas mixture of dry air and water vapour [D].
     """
     dry = dry_pressure(pressure, temperature, humidity, xp)
-    return dry / (_GAS_DRY * temperature) + (pressure - dry) / (_GAS_VAPOR * temperature)
+    return dry / (GAS_CONSTANT * temperature) + (pressure - dry) / (_GAS_VAPOR * temperature)

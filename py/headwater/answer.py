@@ -5,15 +5,13 @@ import math
 from collections.abc import Callable, Iterable, Mapping, Sequence
 from typing import Any
 
-from headwater import air, fields, jet, notes, share, suction, verdict, water, wording
+from headwater import air, engine, fields, hull, jet, launch, notes, share, suction, verdict, water, wording
 from headwater.doubt import (
     HIGH,
     LOW,
     MIDDLE,
     PAPERS_POWER,
     PAPERS_RPM,
-    RPM_SCATTER,
-    SIGMAS,
     TACH_SCALE,
     THRUST_DEDUCTION,
     Holding,
@@ -22,17 +20,33 @@ from headwater.doubt import (
     Reckoning,
     Seen,
     Setting,
+    absorption,
     setting,
     spread,
 )
 from headwater.errors import BadReading
 from headwater.fields import FIELD, Readings
 from headwater.jet import GRAVITY
+from headwater.launch import Outing, Shape
 from headwater.notes import Bound
+from headwater.outing import GAS_STOP, Outlook, flags, gas
 from headwater.suction import State
+from headwater.tried import RPM_SCATTER, SIGMAS, WEIGHT, Launched, Tries
 from headwater.units import QUANTITIES as UNITS
+from headwater.verdict import Decision
 
 CONTRACT = 1
+LAUNCHES = ("planed", "would_not_plane")  # outcomes
+BLOCKED = {"clean": 0.0, "weed": 0.25, "stick": 0.5}  # share of the grate [D]
+# Free gas at the surface, low, middle and high [P].
+GAS = {
+    "clear": (0.0, 0.0, 0.0),
+    "fizzy": (0.001, 0.0022, 0.005),
+    "aerated": (0.005, 0.0122, 0.03),
+    "white": (0.03, 0.05, 0.10),
+}
+_FACTORS_APART = 0.02  # in ln torque factor, that two wide-open rpm tell of the engine
+_GUESSED_BALANCE = 0.03  # of the length, 95 % half-width of a balance point that was not measured [P]
 CURVE_SPEEDS = [float(v) for v in range(26)]  # m/s
 _NODES = (0.0, 8.0, 16.0, 25.0)  # m/s, where the curve's limits and bands are worked out in full
 _NODE_PASSES = 1  # rounds in finding a node's holding rpm, from where the node before it holds
@@ -66,9 +80,21 @@ def answer(case: Any, units: str | Mapping[str, str] | None = None) -> dict[str,
     :returns: verdict, headline, reasons, values with bands, curve and the rest; with errors no values
     Raises nothing: bad readings come back in ``errors``, all at once.
     """
+    return _answered(case, units, WHOLE)[0]
+
+
+# How far an answer is worked out: what stands still, the launch as well, what would help as well.
+STEADY, LAUNCH, WHOLE = 0, 1, 2
+
+
+def _answered(
+    case: Any, units: str | Mapping[str, str] | None, depth: int
+) -> tuple[dict[str, Any], dict[str, str]]:
+    """An answer as far as asked for, and the units of its sentences."""
     readings = fields.read(case)
+    chosen = wording.units_for(readings, units)
     if not readings.errors:
-        return _Answer(readings, wording.units_for(readings, units)).build()
+        return _Answer(readings, chosen, depth).build(), chosen
     return {
         "contract": CONTRACT,
         "verdict": None,
@@ -84,7 +110,7 @@ def answer(case: Any, units: str | Mapping[str, str] | None = None) -> dict[str,
         "launch": None,
         "errors": readings.errors,
         "understood": readings.understood,
-    }
+    }, chosen
 
 
 def answer_json(text: str) -> str:
@@ -140,11 +166,55 @@ def inputs_of(values: Mapping[str, Any]) -> Inputs:
     ):
         inputs["boat." + key] = float(boat[key])
     inputs["hub_share"] = boat["hub_diameter"] / boat["impeller_diameter"]
-    inputs["place.air_pressure"] = air_pressure(place)
+    inputs["place.air_pressure"] = pressure = air_pressure(place)
     inputs["place.water_temperature"] = float(place["water_temperature"])
     inputs["pressure_error"] = 0.0
     inputs["tach"] = 1.0
+    inputs["grate_loss"] = suction.grate_loss(BLOCKED[values["plan"]["grate"]])
+    inputs["gas"], inputs["expansion"] = GAS[values["plan"]["water"]][1], 1.0
+    warm = place.get("air_temperature", air.temperature_at_pressure(pressure))
+    here = engine_factor(boat, pressure, warm, place["humidity"])
+    there = engine_factor_at(boat, boat["wide_open_altitude"])
+    inputs["engine_here"], inputs["engine_there"] = here, there
+    inputs["engine_exponent"] = engine_exponent(boat, there)[1]
+    if "chine_beam" in boat and "dry_mass" in boat:
+        for key in ("dry_mass", "chine_beam", "centre_of_gravity"):
+            inputs["boat." + key] = float(boat[key])
+        inputs["thrust_deduction"] = THRUST_DEDUCTION[1]
+        inputs["intake_length"] = launch.INTAKE_LENGTH[1]
     return inputs
+
+
+def engine_factor(boat: Mapping[str, Any], pressure: float, temperature: float, humidity: float) -> float:
+    """Torque here over that in dry standard air at sea level."""
+    critical = boat.get("critical_altitude", 0.0)
+    return float(engine.torque_factor(boat["aspiration"], pressure, temperature, humidity, critical))
+
+
+def engine_factor_at(boat: Mapping[str, Any], altitude: float) -> float:
+    """The same in dry standard air at an altitude."""
+    pressure = float(air.standard_pressure(altitude))
+    return engine_factor(boat, pressure, air.temperature_at_pressure(pressure), 0.0)
+
+
+def engine_exponent(boat: Mapping[str, Any], there: float) -> tuple[float, float, float]:
+    """Exponent of power over torque factor, low, middle and high; from a wide-open rpm read up high if given.
+
+    :param there: torque factor where the wide-open rpm was read
+    """
+    if "high_rpm" in boat and "high_altitude" in boat:
+        high = engine_factor_at(boat, boat["high_altitude"])
+        if abs(math.log(high / there)) > _FACTORS_APART:
+            found = float(engine.exponent_seen(boat["wide_open_rpm"], boat["high_rpm"], there, high))
+            reach = 3 * math.sqrt(2) * RPM_SCATTER / abs(math.log(high / there))
+            return found - reach, found, found + reach
+    return engine.EXPONENT
+
+
+def wide_open_here(inputs: Inputs) -> float:
+    """Engine rpm that she turns wide open here [1/min]."""
+    there, here = inputs["engine_there"], inputs["engine_here"]
+    return float(engine.wide_open_rpm(inputs["boat.wide_open_rpm"], there, here, inputs["engine_exponent"]))
 
 
 def spans_of(
@@ -180,6 +250,20 @@ def spans_of(
     spans["place.water_temperature"] = (max(here - warm, 273.15), here + warm)
     doubt = pressure_doubt(values["place"])
     spans["pressure_error"] = (-doubt, doubt)
+    if inputs["engine_here"] != inputs["engine_there"]:
+        low, _, high = engine_exponent(boat, inputs["engine_there"])
+        spans["engine_exponent"] = (low, high)
+    if inputs["gas"]:
+        spans["gas"] = (GAS[values["plan"]["water"]][0], GAS[values["plan"]["water"]][2])
+    if "boat.dry_mass" in inputs:
+        spans["boat.dry_mass"] = _about(inputs["boat.dry_mass"], WEIGHT)
+        spans["boat.chine_beam"] = _about(inputs["boat.chine_beam"], FIELD["boat.chine_beam"].tolerance)
+        measured = "boat.centre_of_gravity" in given
+        reach = FIELD["boat.centre_of_gravity"].tolerance if measured else _GUESSED_BALANCE
+        balance, far = inputs["boat.centre_of_gravity"], reach * boat["hull_length"]
+        spans["boat.centre_of_gravity"] = (balance - far, balance + far)
+        spans["thrust_deduction"] = (THRUST_DEDUCTION[0], THRUST_DEDUCTION[2])
+        spans["intake_length"] = (launch.INTAKE_LENGTH[0], launch.INTAKE_LENGTH[2])
     if "suction_specific_speed" in boat:  # else the tach's scale is common to notes and plan and cancels
         spans["tach"] = (1 - TACH_SCALE, 1 + TACH_SCALE)
     return spans
@@ -197,11 +281,18 @@ def older(boat: Mapping[str, Any], note: Mapping[str, Any]) -> bool:
 
 
 def seen_of(values: Mapping[str, Any]) -> list[Seen]:
-    """The notes that count, ready for physics; one without a boat speed proves nothing and is left out."""
+    """The notes that count, ready for physics; one without a boat speed proves nothing and is left out.
+
+    One that let go, or whose revs ran up, in froth or with a grate that was not clean is a hint only: it may
+    have been the air. A launch that planed counts where the hull is known.
+    """
     place, seen = values["place"], []
+    hull_known = "chine_beam" in values["boat"] and "dry_mass" in values["boat"]
     for index, note in enumerate(values["notes"]):
-        if "boat_speed" not in note:
+        planed = note["outcome"] == "planed" and hull_known
+        if not planed and (note["outcome"] in LAUNCHES or "boat_speed" not in note):
             continue
+        clean = note["water"] == "clear" and note["grate"] == "clean"
         temperature = note["water_temperature"]
         density = water.density(temperature)
         warm = FIELD["place.water_temperature"].tolerance
@@ -213,18 +304,58 @@ def seen_of(values: Mapping[str, Any]) -> list[Seen]:
         seen.append(
             Seen(
                 index,
-                note["outcome"],
+                "held" if planed else note["outcome"],
                 note["rpm"],
-                note["boat_speed"],
+                0.0 if planed else note["boat_speed"],
                 air_pressure(note),
                 water.vapor_pressure(temperature),
                 density,
                 math.hypot(by_heat, by_air) / SIGMAS,
                 here,
-                older(values["boat"], note),
+                older(values["boat"], note) or (not clean and note["outcome"] != "held"),
+                clean,
+                planed,
             )
         )
     return seen
+
+
+def tries_of(values: Mapping[str, Any]) -> Tries | None:
+    """The launches that were made with today's set-up, where the hull is known."""
+    boat, place = values["boat"], values["place"]
+    if "chine_beam" not in boat or "dry_mass" not in boat:
+        return None
+    temperature = place["water_temperature"]
+    pressure = air_pressure(place)
+    warm = place.get("air_temperature", air.temperature_at_pressure(pressure))
+    shape = Shape(
+        boat["hull_length"],
+        math.degrees(boat["deadrise"]),
+        water.density(temperature),
+        water.viscosity(temperature),
+        pressure / (air.GAS_CONSTANT * warm),
+    )
+    made, doubts = [], {seen.note: seen for seen in seen_of(values)}
+    for index, note in enumerate(values["notes"]):
+        if note["outcome"] not in LAUNCHES or note["water"] != "clear" or note["grate"] != "clean":
+            continue
+        planed = note["outcome"] == "planed"
+        density = water.density(note["water_temperature"])
+        head = (air_pressure(note) - water.vapor_pressure(note["water_temperature"])) / (density * GRAVITY)
+        made.append(
+            Launched(
+                index,
+                note["rpm"],
+                note.get("feed_in", 0.0),
+                note["seconds"] if planed else None,
+                Outing(((note["load"], hull.ROWS[note["rows"]]),), hull.WINDS[note["wind"]]),
+                density,
+                head,
+                doubts[index].head_sigma if planed else 0.0,
+                note.get("depth", math.inf) < hull.SHALLOW,
+            )
+        )
+    return Tries(shape, boat["jets"], made)
 
 
 def _altitude_alone(place: Mapping[str, Any]) -> float | None:
@@ -249,17 +380,31 @@ def _lagrange(at: float) -> tuple[float, ...]:
 _CURVE_SHARES = [_lagrange(speed) for speed in CURVE_SPEEDS]
 
 
+def _launching(readings: Readings) -> bool:
+    """Whether a launch is asked about: from standing, with the hull and the load known."""
+    boat, loaded = readings.values["boat"], {"plan.people", "plan.gear"} & readings.given
+    known = "chine_beam" in boat and "dry_mass" in boat
+    return bool(loaded and known and not readings.values["plan"]["boat_speed"])
+
+
 class _Answer:
     """One answer in the making."""
 
-    def __init__(self, readings: Readings, units: Mapping[str, str]) -> None:
+    def __init__(self, readings: Readings, units: Mapping[str, str], depth: int) -> None:
         self.readings, self.values, self.units = readings, readings.values, units
         self.boat, self.place, self.plan = (self.values[part] for part in ("boat", "place", "plan"))
         self.running = self.boat["jets_running"]
         self.speed = float(self.plan["boat_speed"])
         self.typed = any(key in self.plan for key in ("power", "rpm", "throttle"))
-        self.wide_open = float(self.boat["wide_open_rpm"])
-        self.check = self.reckon(inputs_of(self.values), self.speed)
+        self.depth = depth
+        self.launching = _launching(readings)
+        # A launch that planed counts as a note; to run it again takes a while: the steady part comes first.
+        self.tries = tries_of(self.values) if depth > STEADY else None
+        inputs = inputs_of(self.values)
+        self.wide_open, self.exponent = wide_open_here(inputs), inputs["engine_exponent"]
+        if inputs["gas"]:
+            inputs["expansion"] = self._expansion(inputs)
+        self.check = self.reckon(inputs, self.speed)
         self.held_to = self.check.holding(self.speed)
         standing = self.speed == 0
         self.held_standing = (
@@ -268,8 +413,12 @@ class _Answer:
         self.lines = self._lines()
         self.shares = {"holding_rpm_share": self._share(0.5), "holding_power_share": self._share(1.5)}
         papers = self.boat["rpm_from"] == "papers" and "power" in self.plan
-        self.decision = verdict.steady(
-            self.check, self.typed, papers, self.held_to.rpm if self.held_to else None
+        holding_rpm = self.held_to.rpm if self.held_to else None
+        white = self.plan["water"] == "white" or gas(self.check)[0] > GAS_STOP
+        self.decision = verdict.hindered(
+            verdict.steady(self.check, self.typed, papers, holding_rpm),
+            white,
+            flags(self.values, self.check),
         )
 
     def reckon(self, inputs: Inputs, speed: float) -> Reckoning:
@@ -277,49 +426,91 @@ class _Answer:
         return Reckoning(
             inputs,
             spans_of(self.values, self.readings.given, inputs),
-            seen_of(self.values),
+            [seen for seen in seen_of(self.values) if self.tries or not seen.planed],
             self.plan_rpm,
             speed,
             self.plan["reserve"],
             math.log(fixed) if fixed else None,
+            self.tries,
         )
+
+    def _expansion(self, inputs: Inputs) -> float:
+        """How many times air in the water has expanded ahead of the impeller, by clear water's pressure."""
+        at = setting({**inputs, "gas": 0.0})
+        state = suction.state(at.unit, at.head, at.density, self.plan_rpm(inputs), self.speed)
+        ahead = suction.static_pressure(state, at.vapor_pressure, at.density)
+        return float(inputs["place.air_pressure"] / ahead) if ahead > at.vapor_pressure else 1.0
 
     def plan_rpm(self, inputs: Inputs) -> float:
         """Engine rpm of the plan; wide open where none was typed."""
         if "rpm" in self.plan:
             return float(self.plan["rpm"])
         if "power" in self.plan:
-            absorbed = jet.absorption(
-                inputs["boat.engine_power"], inputs["boat.wide_open_rpm"], inputs["boat.jets"]
-            )
-            return float((self.plan["power"] / self.running / absorbed) ** (1 / 3))
-        return float(self.plan.get("throttle", 1.0) * self.wide_open)  # no plan typed counts as a plan in rpm
+            return float((self.plan["power"] / self.running / absorption(inputs)) ** (1 / 3))
+        # A share, or no plan typed, counts as a plan in rpm of wide open, as sure as the engine is.
+        thin = inputs["engine_here"] / inputs["engine_there"]
+        turned = self.wide_open * thin ** ((inputs["engine_exponent"] - self.exponent) / 3)
+        return float(self.plan.get("throttle", 1.0) * turned)
 
     def power(self, rpm: float) -> float:
         """Engine power of the running units at an rpm [W]."""
         return float(self.check.centre.unit.absorption * self.running * rpm**3)
 
     def build(self) -> dict[str, Any]:
-        decision = self.decision
         curve = self._curve()
         equivalents = self._equivalents()
         facts = self._facts(curve, equivalents)
+        decision = self._launch(facts) if self.launching and self.tries else self.decision
+        launched, facts["why"] = facts["launch"], decision.why
         return {
             "contract": CONTRACT,
             "verdict": decision.verdict,
             "headline": wording.headline(decision.verdict, decision.code, facts, self.units),
             "ground": decision.ground,
             "reasons": wording.reasons(decision.why, facts, self.units),
-            "cautions": wording.cautions(self._caution_codes(), facts, self.units),
+            "cautions": wording.cautions(
+                [*self._caution_codes(), *facts["launch_cautions"]], facts, self.units
+            ),
             "values": self._values(facts),
             "equivalents": equivalents,
             "curve": curve,
             "ledger": self._ledger(),
             "movers": self._movers(),
-            "launch": None,
+            "launch": launched,
             "errors": [],
             "understood": self.readings.understood,
         }
+
+    # The launch
+
+    def _launch(self, facts: dict[str, Any]) -> Decision:
+        """Work the launch out, put it among the facts, and decide by it."""
+        assert self.tries
+        outlook = Outlook(
+            self.values,
+            self.check,
+            self.tries,
+            self.wide_open,
+            self._allowed if self.holding_nodes else None,
+            facts["full_speed"],
+        )
+        launched = outlook.build()
+        if self.depth == WHOLE:
+            later = outlook.later()
+            launched["remedies"] = later.pop("remedies")
+            for name, row in later.items():
+                launched[name].update(row)
+        facts["launch"] = launched
+        facts["launch_cautions"] = outlook.cautions()
+        if not self.typed:
+            self.check = self.check.replanned(outlook.planned.rpm)
+            facts["plan_rpm"] = outlook.planned.rpm
+        return outlook.ways[outlook.better].decision
+
+    def _allowed(self, speed: float) -> float:
+        """The most ln S that is a go at a boat speed; as the curve has it."""
+        shares = _lagrange(min(speed, _NODES[-1]))
+        return sum(share * x for share, x in zip(shares, self.holding_nodes, strict=True))
 
     # Lines and curve
 
@@ -381,6 +572,9 @@ class _Answer:
             if speed:
                 held = check.holding(speed, check.rpm_at(held.x, speed) if held else None, _NODE_PASSES)
             nodes.append(self.lines if speed == self.speed else self._lines_at(speed, held, exact=False))
+        self.holding_nodes = [node["holding"].x for node in nodes if "holding" in node]
+        if len(self.holding_nodes) < len(_NODES):
+            self.holding_nodes = []
         curve: dict[str, Any] = {"boat_speed": CURVE_SPEEDS}
         for name in ("holding", "let_go", "flare"):
             drawn = all(name in node for node in nodes)
@@ -472,6 +666,8 @@ class _Answer:
             "reserve": self.plan["reserve"],
             "teach": self._teach(),
             "note": None,
+            "launch": None,
+            "launch_cautions": [],
             "holding_rpm_share": self.shares["holding_rpm_share"][0],
             "holding_power_share": self.shares["holding_power_share"][0],
         }
@@ -487,10 +683,16 @@ class _Answer:
         if check.contradiction:
             facts["disagree"] = [self._named(check.seen[i].note) for i in check.contradiction]
         facts["off"] = [self._named(note) for note in check.without_head]
-        facts["speedless"] = [
-            self._named(i) for i, note in enumerate(self.values["notes"]) if "boat_speed" not in note
-        ]
+        facts["speedless"] = [self._named(i) for i in self._speedless()]
         return facts
+
+    def _speedless(self) -> list[int]:
+        """Notes that do not say whether she stood or ran."""
+        return [
+            i
+            for i, note in enumerate(self.values["notes"])
+            if "boat_speed" not in note and note["outcome"] not in LAUNCHES
+        ]
 
     def _named(self, index: int) -> dict[str, Any]:
         note = self.values["notes"][index]
@@ -507,8 +709,9 @@ class _Answer:
         known = check.known_at_plan
         if not check.has_head:
             return None
-        if known.proven:
-            return equivalents[check.seen[known.proven.note].note]
+        held = sorted(known.held, key=lambda b: check.seen[b.note].planed)  # a plain one before a launch
+        if held:
+            return equivalents[check.seen[held[0].note].note]
         rest = [equivalents[seen.note] for seen in check.seen if not seen.hint and seen.outcome != "held"]
         return min(rest, key=lambda row: row["rpm_here"]) if rest else None
 
@@ -542,7 +745,7 @@ class _Answer:
             codes.append("notes_disagree")
         if check.stop_dropped or check.without_head:
             codes.append("measurement_off")
-        if any("boat_speed" not in note for note in self.values["notes"]):
+        if self._speedless():
             codes.append("note_needs_speed")
         if check.seen and not check.today:
             codes.append("older_notes_only")
@@ -554,7 +757,14 @@ class _Answer:
             codes.append("barometer_at_water")
         if self.boat["rpm_from"] == "papers":
             codes.append("papers")
+        if "rpm" not in self.plan and "power" not in self.plan and self._engine_reckoned():
+            codes.append("engine_extrapolated")
         return codes
+
+    def _engine_reckoned(self) -> bool:
+        """Whether what wide open turns here is reckoned past the standards' reach, and was never read."""
+        low = air.standard_pressure(engine.EXTRAPOLATED_ABOVE)
+        return self.check.inputs["place.air_pressure"] < low and "high_rpm" not in self.boat
 
     def _fixed_disagrees(self) -> bool:
         check = self.check
@@ -782,8 +992,15 @@ class _Answer:
 
 def shown(case: Any, units: str | Mapping[str, str] | None = None) -> dict[str, Any]:
     """The answer to a case and the sheet of sentences that shows it."""
-    result = answer(case, units)
-    return {"answer": result, "sheet": wording.sheet(result, wording.units_for(fields.read(case), units))}
+    return _shown(case, units, WHOLE)
+
+
+def _shown(case: Any, units: str | Mapping[str, str] | None, depth: int) -> dict[str, Any]:
+    result, chosen = _answered(case, units, depth)
+    sheet = wording.sheet(result, chosen)
+    if depth == STEADY and result["verdict"] and _launching(fields.read(case)):
+        sheet = {**sheet, **wording.waiting()}
+    return {"answer": result, "sheet": sheet}
 
 
 def reply(text: str) -> str:
@@ -798,7 +1015,8 @@ def reply(text: str) -> str:
     ask = request.get("ask")
     try:
         if ask == "check":
-            return _dump(shown(request.get("case"), request.get("units")))
+            depth = request.get("depth", WHOLE)
+            return _dump(_shown(request.get("case"), request.get("units"), depth))
         if ask == "link":
             return _dump({"fragment": share.encode(request.get("case"))})
         if ask == "open":

@@ -4,10 +4,11 @@ Errors common to the notes and the plan cancel because S is learned through the 
 absorption law that the plan then uses. Shifts are carried in ln S and ln rpm, up and down kept apart.
 """
 
+import copy
 import math
 from collections.abc import Callable, Iterable, Sequence
 from functools import cached_property
-from itertools import zip_longest
+from itertools import chain, repeat, zip_longest
 from operator import mul
 from typing import NamedTuple
 
@@ -15,17 +16,20 @@ from headwater import jet, notes, suction, water
 from headwater.jet import GRAVITY
 from headwater.notes import Bound
 from headwater.suction import State
+from headwater.tried import RPM_SCATTER, SIGMAS, Held, Tries
 
 # 95 % half-widths of what is not an input of its own [P].
-RPM_SCATTER = 0.01  # of one rpm reading, relative
 TACH_SCALE = 0.02  # of the tach, relative; common to notes and plan
 PAPERS_POWER, PAPERS_RPM = 0.15, 0.05  # of engine power and wide-open rpm out of papers, relative
 THRUST_DEDUCTION = (-0.08, 0.0, 0.05)  # low, middle, high; Eslamdoost et al. 2018 [S]
 
-SIGMAS = 1.959964  # of a 95 % half-width
 CHANCE = 0.04  # of letting go, the most that proven ground may carry [P]
 LOW, MIDDLE, HIGH = 0.025, 0.5, 0.975
 EQUAL = 1e-6  # in ln S
+# Inputs that a launch alone feels.
+LAUNCH_KEYS = frozenset(
+    ("boat.dry_mass", "boat.centre_of_gravity", "boat.chine_beam", "thrust_deduction", "intake_length")
+)
 _FEW_PASSES = 2  # with so few the ends are worked out but once
 _SAME_DOUBT = 0.005  # relative change of rpm under which the ends are not worked out again
 DISAGREE_EASE = 0.95  # of the lowest let-go rpm, from where notes that contradict forbid a go [P]
@@ -36,10 +40,11 @@ Inputs = dict[str, float]
 class Setting(NamedTuple):
     """The pump and the water here, under one set of inputs."""
 
-    unit: jet.Unit
+    unit: jet.Unit  # with what lies on the grate here
+    clean: jet.Unit  # with a clean grate, as notes count
     submergence: float  # z [m]
     vapor_pressure: float  # [Pa]
-    density: float  # [kg/m3]
+    density: float  # of the water with its air, here [kg/m3]
     head: float  # at rest, here [m]
     pressure_error: float  # [Pa], shared by notes made at this very place
     tach: float  # true rpm over rpm read
@@ -57,16 +62,20 @@ class Seen(NamedTuple):
     density: float  # [kg/m3]
     head_sigma: float  # one sigma of its place's own readings [m]
     here: bool  # its pressure is the plan's own reading
-    hint: bool  # of an older pump set-up
+    hint: bool  # of an older pump set-up, or it let go in froth or with a grate that was not clean
+    clean: bool  # clear water and a clean grate: it may prove
+    planed: bool = False  # a launch: it held at its hardest instant
 
 
 class End(NamedTuple):
     """One input at one end of its range."""
 
     field: str
+    inputs: Inputs
     setting: Setting
     plan_rpm: float
     xs: list[float | None]  # ln S of each note under it
+    allowances: list[float]  # by how much it moves each launch's ln allowance on the drag
 
 
 class Moved(NamedTuple):
@@ -90,6 +99,18 @@ class Known(NamedTuple):
     def proven(self) -> Bound | None:
         """The hardest clean held note."""
         return self.held[0] if self.held else None
+
+
+class Judged(NamedTuple):
+    """A state against what is known of the pump."""
+
+    asked: float | None  # ln S; none where no head is left
+    boils: bool  # ahead of the impeller
+    known: Known
+    high: float | None  # ln of the high side of NPSHA/NPSHR; none while nothing bounds the pump from above
+    chance: float | None  # of letting go; none where no held note asked as much
+    new_ground: float | None  # the largest ln S that is a go on new ground
+    disputed: bool  # notes contradict, and it is no more than 5 % in rpm under the lowest let go
 
 
 class Flare(NamedTuple):
@@ -124,7 +145,7 @@ class Line(NamedTuple):
 
 def setting(inputs: Inputs) -> Setting:
     """The pump and the water under a set of inputs, keyed by field."""
-    unit = jet.unit(
+    clean = jet.unit(
         inputs["boat.nozzle_diameter"],
         inputs["boat.impeller_diameter"],
         inputs["boat.impeller_diameter"] * inputs["hub_share"],
@@ -134,16 +155,25 @@ def setting(inputs: Inputs) -> Setting:
         inputs["boat.nozzle_loss"],
         inputs["boat.pump_efficiency"],
         inputs["boat.driveline_efficiency"],
-        jet.absorption(inputs["boat.engine_power"], inputs["boat.wide_open_rpm"], inputs["boat.jets"]),
+        absorption(inputs),
         inputs["boat.gear_ratio"],
     )
     submergence = inputs["boat.shaft_depth"] - inputs["boat.impeller_diameter"] / 2
     temperature = inputs["place.water_temperature"]
-    vapor_pressure, density = water.vapor_pressure(temperature), water.density(temperature)
+    vapor_pressure = water.vapor_pressure(temperature)
+    gas = suction.gas_share(inputs["gas"], inputs["expansion"])
+    density = water.density(temperature) * (1 - gas)
     pressure_error = inputs["pressure_error"]
     air_pressure = inputs["place.air_pressure"] + pressure_error
     head = suction.head_at_rest(air_pressure, vapor_pressure, density, submergence)
-    return Setting(unit, submergence, vapor_pressure, density, head, pressure_error, inputs["tach"])
+    unit = jet.blocked(clean, inputs["grate_loss"])
+    return Setting(unit, clean, submergence, vapor_pressure, density, head, pressure_error, inputs["tach"])
+
+
+def absorption(inputs: Inputs) -> float:
+    """Engine power that one unit absorbs over engine rpm cubed, from what wide open turned and where."""
+    power = inputs["boat.engine_power"] * inputs["engine_there"]
+    return float(jet.absorption(power, inputs["boat.wide_open_rpm"], inputs["boat.jets"]))
 
 
 def asked(at: Setting, rpm: float, boat_speed: float) -> float | None:
@@ -156,7 +186,7 @@ def seen_state(at: Setting, seen: Seen) -> State:
     """The state a note was made in."""
     pressure = seen.air_pressure + (at.pressure_error if seen.here else 0.0)
     head = suction.head_at_rest(pressure, seen.vapor_pressure, seen.density, at.submergence)
-    return suction.state(at.unit, head, seen.density, seen.rpm, seen.boat_speed)
+    return suction.state(at.clean, head, seen.density, seen.rpm, seen.boat_speed)
 
 
 def seen_asked(at: Setting, seen: Seen) -> float | None:
@@ -218,6 +248,7 @@ class Reckoning:
     :param boat_speed: of the plan [m/s]
     :param reserve: asked of NPSH on new ground
     :param fixed: ln S where the person fixed it
+    :param tries: launches that were made, where the hull is known; those that planed are in ``seen``
     """
 
     def __init__(
@@ -229,12 +260,18 @@ class Reckoning:
         boat_speed: float,
         reserve: float,
         fixed: float | None,
+        tries: Tries | None = None,
     ) -> None:
         self.inputs, self.boat_speed, self.reserve, self.fixed = inputs, boat_speed, reserve, fixed
-        self.centre = setting(inputs)
+        self.centre = at = setting(inputs)
         self.rpm = plan_rpm(inputs)
+        self.marks: list[notes.Mark] = []
+        self._launched: dict[int, Held] = {}
+        if tries:
+            self.marks, self._launched = tries.first(inputs, at.clean, at.submergence, at.tach)
         self.seen, self.xs, self.sigmas, self.flow_per_rpm = self._read(seen)
-        self.without_head = [note.note for note in seen if note not in self.seen]
+        kept = {note.note for note in self.seen}
+        self.without_head = [note.note for note in seen if note.note not in kept]
         self.state = suction.state(
             self.centre.unit, self.centre.head, self.centre.density, self.rpm, boat_speed
         )
@@ -243,15 +280,29 @@ class Reckoning:
         for key, span in spans.items():
             for value in span:
                 moved = {**inputs, key: value}
-                at = setting(moved)
-                self.ends.append(End(key, at, plan_rpm(moved), [seen_asked(at, note) for note in self.seen]))
+                at = self.centre if key in LAUNCH_KEYS else setting(moved)
+                allowances: list[float] = []
+                asked_by: dict[int, float | None] = {}
+                if tries:
+                    allowances, asked_by = tries.again(moved, at.clean, at.submergence, at.tach, self.marks)
+                xs = [asked_by[note.note] if note.planed else seen_asked(at, note) for note in self.seen]
+                self.ends.append(End(key, moved, at, plan_rpm(moved), xs, allowances))
         self.stop_dropped = any(
-            note.outcome == "held" and not note.hint and not self._above_boiling(note) for note in self.seen
+            note.outcome == "held" and note.clean and not note.planed and not self._above_boiling(note)
+            for note in self.seen
         )
 
     def _read(self, seen: Sequence[Seen]) -> tuple[list[Seen], list[float], list[float], list[float]]:
         kept, xs, sigmas, flows = [], [], [], []
         for note in seen:
+            if note.planed:
+                held = self._launched[note.note]
+                if held.x < math.inf:
+                    kept.append(note._replace(boat_speed=held.boat_speed))
+                    xs.append(held.x)
+                    sigmas.append(held.sigma)
+                    flows.append(held.flow_per_rpm)
+                continue
             state = seen_state(self.centre, note)
             if state.npsh_available <= 0:
                 continue
@@ -265,6 +316,19 @@ class Reckoning:
     def _above_boiling(self, note: Seen) -> bool:
         state = seen_state(self.centre, note)
         return bool(suction.static_pressure(state, note.vapor_pressure, note.density) > note.vapor_pressure)
+
+    def replanned(self, rpm: float) -> "Reckoning":
+        """The same with a plan at another engine rpm."""
+        other = copy.copy(self)
+        for name in ("known_at_plan", "capped", "learned_ends", "plan_states", "plan_steps", "plan_ratio"):
+            other.__dict__.pop(name, None)
+        other.__dict__.pop("plan_judged", None)
+        at = other.centre
+        other.rpm = rpm
+        other.state = suction.state(at.unit, at.head, at.density, rpm, other.boat_speed)
+        other.asked = asked(at, rpm, other.boat_speed)
+        other.ends = [end._replace(plan_rpm=rpm) for end in other.ends]
+        return other
 
     # What is known, for the state asked about
 
@@ -294,7 +358,11 @@ class Reckoning:
     def _known(self, boat_speed: float, flow_per_rpm: float) -> Known:
         limit = self.bounds(boat_speed, flow_per_rpm)
         bounds = [b for b in limit if b.note not in self.dropped]
-        held = [b for b in bounds if self.seen[b.note].outcome == "held" and not b.hint]
+        held = [
+            b
+            for b in bounds
+            if self.seen[b.note].outcome == "held" and self.seen[b.note].clean and not b.hint
+        ]
         flare = [b for b in self._flare_bounds(limit) if b.note not in self._flare_dropped]
         return Known(
             bounds,
@@ -422,7 +490,9 @@ class Reckoning:
         centre = asked(self.centre, rpm, boat_speed)
         if centre is None:
             return [None] * len(self.ends)
-        moved = (asked(end.setting, rpm, boat_speed) for end in self.ends)
+        moved = (
+            centre if end.setting is self.centre else asked(end.setting, rpm, boat_speed) for end in self.ends
+        )
         return [None if x is None else x - centre for x in moved]
 
     @cached_property
@@ -454,20 +524,20 @@ class Reckoning:
         """One sigma in ln S of what does not cancel between a state and a note.
 
         :param slope: d ln S_req / d ln rpm at the state
-        :param steps: by how much each end moves the ln S that the state asks
+        :param steps: by how much each end moves the ln S that the state asks, and what else moves it
         """
-        apart = []
-        for end, step in zip(self.ends, steps, strict=True):
+        apart = list(steps)
+        for k, (end, step) in enumerate(zip(self.ends, steps, strict=False)):
             there = end.xs[bound.note]
-            apart.append(None if step is None or there is None else step - (there - bound.x))
+            apart[k] = None if step is None or there is None else step - (there - bound.x)
         return math.hypot(slope * RPM_SCATTER / 2, reach(apart, 0.0, 1) / SIGMAS)
 
     def _away(self, steps: Sequence[float | None], side: int) -> list[float | None]:
         """By how much each end moves the limit's quantile away from what a state asks."""
-        learned = [*self.learned_ends, (0.0, 0.0, 0.0), (0.0, 0.0, 0.0)]
+        learned = chain(self.learned_ends, repeat((0.0, 0.0, 0.0)))
         return [
             None if step is None or moved is None else moved[side] - step
-            for step, moved in zip(steps, learned, strict=True)
+            for step, moved in zip(steps, learned, strict=False)
         ]
 
     def ratio_low(self, known: Known, x: float, steps: Sequence[float | None]) -> float | None:
@@ -496,26 +566,52 @@ class Reckoning:
         )
 
     @cached_property
-    def plan_chance(self) -> float | None:
-        """Chance of letting go at the plan; none where no held note asked as much.
+    def plan_judged(self) -> Judged:
+        """The plan's steady state against what is known of the pump."""
+        known, at = self.known_at_plan, self.centre
+        boils = suction.static_pressure(self.state, at.vapor_pressure, at.density) <= at.vapor_pressure
+        if self.asked is None:
+            return Judged(None, bool(boils), known, None, None, None, False)
+        return self.judged(
+            self.asked,
+            bool(boils),
+            known,
+            self.rpm,
+            self.boat_speed,
+            self.plan_steps[:-2],
+            self.plan_ratio[1],
+        )
 
-        The plan is blurred by what does not cancel with the nearest of the notes that prove it: the one that
+    def judged(
+        self,
+        x: float,
+        boils: bool,
+        known: Known,
+        rpm: float,
+        boat_speed: float,
+        steps: Sequence[float | None],
+        high: float | None,
+    ) -> Judged:
+        """A state that asks ln S of x against what is known of the pump.
+
+        The state is blurred by what does not cancel with the nearest of the notes that prove it: the one that
         shares most of its errors.
-        """
-        known, asked = self.known_at_plan, self.asked
-        assert asked is not None
-        proving = [bound for bound in known.held if bound.x + EQUAL >= asked]
-        if not proving or known.belief is None or self.fixed is not None:
-            return None
-        slope = self.slope(self.rpm, self.boat_speed)
-        sigma = min(self._blur(bound, slope, self.plan_steps[:-2]) for bound in proving)
-        return known.belief.chance_under(asked, sigma)
 
-    @cached_property
-    def new_ground_at_plan(self) -> float | None:
-        """The largest ln S that is a go on new ground, judged with the plan's doubt."""
-        assert self.asked is not None
-        return self._new_ground(self.known_at_plan, self.asked, self.plan_steps)
+        :param steps: by how much each end moves x, without the state's own reading
+        :param high: ln of the high side of NPSHA/NPSHR
+        """
+        slope = self.slope(rpm, boat_speed)
+        proving = [bound for bound in known.held if bound.x + EQUAL >= x]
+        chance = None
+        if proving and known.belief is not None and self.fixed is None:
+            sigma = min(self._blur(bound, slope, steps) for bound in proving)
+            chance = known.belief.chance_under(x, sigma)
+        new = self._new_ground(known, x, [*steps, -slope * RPM_SCATTER, slope * RPM_SCATTER])
+        disputed = False
+        if self.contradiction and known.lid:
+            eased = asked(self.centre, DISAGREE_EASE * self.rpm_at(known.lid.x, boat_speed), boat_speed)
+            disputed = eased is not None and x >= eased
+        return Judged(x, boils, known, high, chance, new, disputed)
 
     @cached_property
     def absorbed_steps(self) -> list[float]:

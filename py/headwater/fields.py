@@ -30,7 +30,7 @@ class Field(NamedTuple):
     mark: str = "P"  # of default, span and tolerance
     source: str = "measured"  # key of sources.SOURCES
     choices: tuple[str, ...] = ()
-    group: str = "first"  # where the form shows it: first, notes, fine
+    group: str = "first"  # where the form shows it: first, notes, note_launch, hull, launch, fine
 
     @property
     def units(self) -> tuple[str, ...]:
@@ -39,8 +39,11 @@ class Field(NamedTuple):
 
 
 PHONE_ALTITUDE = 50.0  # 95 % half-width of an altitude from a phone [m] [P]
+LENGTH_OVER_BEAM = 3.2  # of the bottom, where it was not measured [P]
+DRY_SHARE = 0.37  # of the length, where the dry boat balances, where it was not measured [P]
 HUB_SHARE = (1 / 5, 1 / 2.5)  # 95 % range of hub over impeller where the hub was not measured [P]
 PRESSURE_TRAP = 0.06  # share by which the pressure at the water may differ from its altitude's standard [P]
+HIGH_APART = 500.0  # m between two wide-open rpm that tell of the engine at altitude [P]
 MOST_HUB = 0.8  # of the impeller's diameter: more is a slip of the tape [P]
 LONGEST_TEXT = 80  # characters of a label
 MOST_NOTES = 200
@@ -49,6 +52,11 @@ MOST_NOTES = 200
 def _length(key: str, label: str, meaning: str, measure: str, low: float, high: float, **more: Any) -> Field:
     spread: dict[str, Any] = {"tolerance": 0.01, "tolerance_kind": "relative"}
     return Field(key, label, meaning, measure, "length", low, high, **spread | more)
+
+
+def _mass(key: str, label: str, meaning: str, measure: str, low: float, high: float, **more: Any) -> Field:
+    spread: dict[str, Any] = {"tolerance": 0.05, "tolerance_kind": "relative", "source": "practice"}
+    return Field(key, label, meaning, measure, "mass", low, high, **spread | more)
 
 
 def _rpm(key: str, label: str, meaning: str, measure: str, low: float = 100.0, **more: Any) -> Field:
@@ -275,6 +283,127 @@ FIELDS: tuple[Field, ...] = (
         0.50,
         group="fine",
     ),
+    Field(
+        "boat.wide_open_altitude",
+        "Wide-open rpm seen at",
+        "Altitude at which the wide-open rpm was read.",
+        "Read it off the map. Sea level if left out.",
+        "altitude",
+        -450.0,
+        6000.0,
+        0.0,
+        source="practice",
+        group="fine",
+    ),
+    Field(
+        "boat.aspiration",
+        "Engine breathes",
+        "How the engine gets its air: what altitude takes from it follows from this.",
+        "Boosted is a petrol engine with a turbo or blower; say up to which altitude it keeps its power.",
+        "choice",
+        default="natural",
+        source="iso1585",
+        choices=("natural", "boosted", "diesel", "turbo_diesel"),
+        group="fine",
+    ),
+    Field(
+        "boat.critical_altitude",
+        "Boost lasts up to",
+        "Altitude up to which a boosted engine keeps its power.",
+        "Ask who tuned it, or note at which altitude wide open first turned slower.",
+        "altitude",
+        0.0,
+        6000.0,
+        source="practice",
+        group="fine",
+    ),
+    _rpm(
+        "boat.high_rpm",
+        "Wide-open rpm seen up high",
+        "A second wide-open rpm, read far above the first: it replaces the rule for her engine.",
+        "Light, flat deep water, wide open. Let the tach settle, then read it.",
+        1000.0,
+        group="fine",
+    ),
+    Field(
+        "boat.high_altitude",
+        "Seen up high at",
+        "Altitude of that second wide-open rpm.",
+        "Read it off the map.",
+        "altitude",
+        -450.0,
+        6000.0,
+        tolerance=30.0,
+        tolerance_kind="absolute",
+        source="practice",
+        group="fine",
+    ),
+    _length(
+        "boat.chine_beam",
+        "Beam between the chines",
+        "Width of the bottom from chine to chine, where she is widest.",
+        "On the trailer, with a tape under her, chine to chine.",
+        0.8,
+        5.0,
+        group="hull",
+    ),
+    _mass(
+        "boat.dry_mass",
+        "Weight, dry",
+        "The boat ready to run, without people, fuel and gear.",
+        "A public scale with and without the boat on the trailer, or the plate.",
+        150.0,
+        20000.0,
+        group="hull",
+    ),
+    _length(
+        "boat.hull_length",
+        "Length of the bottom",
+        "Length of the bottom from the transom to where it meets the water up front.",
+        "A tape along the keel. 3.2 times the beam if left out.",
+        2.5,
+        20.0,
+        group="hull",
+    ),
+    Field(
+        "boat.deadrise",
+        "Deadrise",
+        "Angle of the bottom against level, aft of midship.",
+        "A phone's level on the bottom beside the keel, boat level.",
+        "angle",
+        0.0,
+        math.radians(30.0),
+        math.radians(10.0),
+        source="practice",
+        group="hull",
+    ),
+    _length(
+        "boat.centre_of_gravity",
+        "Balance point, dry",
+        "Where she balances without people, fuel and gear, ahead of the transom.",
+        "Lift or roll her on one bar until she balances. 0.37 of the length if left out.",
+        0.3,
+        12.0,
+        group="hull",
+    ),
+    _length(
+        "boat.intake_height",
+        "Intake under the shaft",
+        "How far the intake's opening lies under the shaft's centre.",
+        "A tape at the transom. The wear ring's bore if left out.",
+        0.0,
+        1.5,
+        group="hull",
+    ),
+    _mass(
+        "boat.load_limit",
+        "Most aboard",
+        "The most that may be aboard: people, fuel and gear together. It caps the heaviest load.",
+        "Read the capacity plate, or take what your licence says.",
+        10.0,
+        20000.0,
+        group="hull",
+    ),
     _coefficient(
         "intake_loss",
         "Intake loss",
@@ -364,6 +493,83 @@ FIELDS: tuple[Field, ...] = (
         source="practice",
         group="fine",
     ),
+    Field(
+        "place.room",
+        "Clear water ahead",
+        "How much clear water she has to get on plane and still turn away.",
+        "Pace it along the bank, or measure it on the map.",
+        "distance",
+        5.0,
+        5000.0,
+        group="launch",
+    ),
+    Field(
+        "place.current",
+        "Current",
+        "Speed of the river at the launch.",
+        "Drift with the engine off and read the GPS.",
+        "speed",
+        0.0,
+        8.0,
+        0.0,
+        source="practice",
+        group="launch",
+    ),
+    Field(
+        "place.below",
+        "What lies beyond",
+        "What comes after the clear water. A rapid or rocks take ten metres more.",
+        "Walk down and look.",
+        "choice",
+        source="practice",
+        choices=("flat", "rapid", "rocks"),
+        group="launch",
+    ),
+    _length(
+        "place.depth",
+        "Depth of the water",
+        "Depth where she launches. Deep if left out.",
+        "A pole or the sounder.",
+        0.2,
+        100.0,
+        group="launch",
+    ),
+    Field(
+        "place.wind",
+        "Wind against her",
+        "Wind from ahead on the launch.",
+        "Calm: flags hang. Breeze: they lift. Strong: spray flies.",
+        "choice",
+        default="calm",
+        source="practice",
+        choices=("calm", "breeze", "strong"),
+        group="launch",
+    ),
+    Field(
+        "place.air_temperature",
+        "Air",
+        "Temperature of the air. The standard one at the altitude if left out.",
+        "A thermometer in the shade.",
+        "temperature",
+        233.15,
+        328.15,
+        tolerance=2.0,
+        tolerance_kind="absolute",
+        source="practice",
+        group="fine",
+    ),
+    Field(
+        "place.humidity",
+        "Humidity",
+        "Relative humidity of the air. It costs an engine a little power on a hot day.",
+        "Leave it out unless it is hot and close.",
+        "share",
+        0.0,
+        1.0,
+        0.0,
+        source="practice",
+        group="fine",
+    ),
     _rpm(
         "plan.rpm",
         "How hard, rpm",
@@ -395,6 +601,109 @@ FIELDS: tuple[Field, ...] = (
         default=0.0,
     ),
     Field(
+        "plan.people",
+        "People",
+        "How many are aboard. 85 kg each.",
+        "Count heads, yours too.",
+        "count",
+        0,
+        60,
+        0,
+        source="practice",
+        group="launch",
+    ),
+    _mass(
+        "plan.gear",
+        "Gear",
+        "Weight of all that is aboard beside people and fuel.",
+        "Weigh a few bags, count the rest.",
+        0.0,
+        15000.0,
+        default=0.0,
+        group="launch",
+    ),
+    Field(
+        "plan.fuel",
+        "Fuel",
+        "Fuel aboard.",
+        "Read the gauge, or what was filled.",
+        "volume",
+        0.0,
+        5.0,
+        0.0,
+        tolerance=0.05,
+        tolerance_kind="relative",
+        source="practice",
+        group="launch",
+    ),
+    Field(
+        "plan.rows",
+        "People sit",
+        "Where most people sit until she is on plane.",
+        "Tell them before you start.",
+        "choice",
+        default="middle",
+        source="practice",
+        choices=("back", "middle", "front"),
+        group="launch",
+    ),
+    Field(
+        "plan.direction",
+        "Launch",
+        "Up against the current or down with it. Both are answered where it is left out.",
+        "Choose one once you have decided.",
+        "choice",
+        source="practice",
+        choices=("up", "down"),
+        group="launch",
+    ),
+    Field(
+        "plan.feed_in",
+        "Feed in over",
+        "Time from idle to the planned rpm. The advised one if left out.",
+        "Count it.",
+        "time",
+        0.0,
+        60.0,
+        tolerance=0.5,
+        tolerance_kind="absolute",
+        source="practice",
+        group="launch",
+    ),
+    Field(
+        "plan.water",
+        "The water itself",
+        "Air in it at the intake. Fizzy: fine bubbles. Aerated: milky. White: foam.",
+        "Look at it where the intake will be, not at the bank.",
+        "choice",
+        default="clear",
+        source="practice",
+        choices=("clear", "fizzy", "aerated", "white"),
+        group="launch",
+    ),
+    Field(
+        "plan.grate",
+        "Grate",
+        "Whether anything lies on the intake grate.",
+        "Engine off, key out, then look or reach.",
+        "choice",
+        default="clean",
+        source="practice",
+        choices=("clean", "weed", "stick"),
+        group="launch",
+    ),
+    Field(
+        "plan.standing_waves",
+        "Standing waves in the run",
+        "Whether the run has waves or a drop that lift the stern out of the water.",
+        "Scout the run.",
+        "choice",
+        default="no",
+        source="practice",
+        choices=("no", "yes"),
+        group="launch",
+    ),
+    Field(
         "plan.reserve",
         "Reserve on new ground",
         "How many times the head asked must be there before new ground is a go.",
@@ -410,10 +719,10 @@ FIELDS: tuple[Field, ...] = (
     Field(
         "notes.outcome",
         "What she did",
-        "Held; the revs ran up but she did not let go; or she let go.",
+        "Held; the revs ran up but she did not let go; she let go; got on plane; or would not get on plane.",
         "Write what she did, not what you hoped.",
         "choice",
-        choices=("held", "flared", "let_go"),
+        choices=("held", "flared", "let_go", "planed", "would_not_plane"),
         required=True,
         group="notes",
     ),
@@ -450,6 +759,105 @@ FIELDS: tuple[Field, ...] = (
         group="notes",
     ),
     *_barometers("notes", " there", "notes"),
+    _mass(
+        "notes.load",
+        "Load then",
+        "People, fuel and gear aboard then, together.",
+        "85 kg a head, 0.74 kg a litre of fuel, and the gear.",
+        0.0,
+        20000.0,
+        group="note_launch",
+    ),
+    Field(
+        "notes.seconds",
+        "Seconds to plane",
+        "From opening the throttle until she was on plane.",
+        "Count it, or let somebody aboard time it.",
+        "time",
+        0.5,
+        180.0,
+        tolerance=0.15,
+        tolerance_kind="relative",
+        source="practice",
+        group="note_launch",
+    ),
+    Field(
+        "notes.feed_in",
+        "Fed in over",
+        "Time from idle to that rpm then.",
+        "Count it.",
+        "time",
+        0.0,
+        60.0,
+        tolerance=0.5,
+        tolerance_kind="absolute",
+        source="practice",
+        group="note_launch",
+    ),
+    Field(
+        "notes.rows",
+        "People sat",
+        "Where most people sat then.",
+        "As you remember it.",
+        "choice",
+        default="middle",
+        source="practice",
+        choices=("back", "middle", "front"),
+        group="note_launch",
+    ),
+    _length(
+        "notes.depth",
+        "Depth there",
+        "Depth of the water then. Deep if left out.",
+        "A pole or the sounder.",
+        0.2,
+        100.0,
+        group="note_launch",
+    ),
+    Field(
+        "notes.wind",
+        "Wind then",
+        "Wind from ahead then.",
+        "As you remember it.",
+        "choice",
+        default="calm",
+        source="practice",
+        choices=("calm", "breeze", "strong"),
+        group="note_launch",
+    ),
+    Field(
+        "notes.current",
+        "Current then",
+        "Speed of the river then.",
+        "Drift and read the GPS.",
+        "speed",
+        0.0,
+        8.0,
+        source="practice",
+        group="note_launch",
+    ),
+    Field(
+        "notes.water",
+        "The water then",
+        "Air in it at the intake then.",
+        "As you remember it.",
+        "choice",
+        default="clear",
+        source="practice",
+        choices=("clear", "fizzy", "aerated", "white"),
+        group="note_launch",
+    ),
+    Field(
+        "notes.grate",
+        "Grate then",
+        "Whether anything lay on the grate then.",
+        "What you found when you looked.",
+        "choice",
+        default="clean",
+        source="practice",
+        choices=("clean", "weed", "stick"),
+        group="note_launch",
+    ),
 )
 FIELD = {field.key: field for field in FIELDS}
 _PARTS = ("place", "boat", "plan", "notes")
@@ -457,19 +865,6 @@ _SHORT = {
     part: {field.key.partition(".")[2]: field for field in FIELDS if field.key.startswith(f"{part}.")}
     for part in _PARTS
 }
-# What later versions take: known, and refused by name, so that nobody thinks that it was heeded.
-NOT_YET = frozenset(
-    f"{part}.{name}"
-    for part, names in {
-        "boat": "wide_open_altitude high_rpm high_altitude load_limit aspiration critical_altitude "
-        "chine_beam deadrise hull_length dry_mass centre_of_gravity intake_height",
-        "place": "air_temperature humidity current depth wind room below",
-        "plan": "feed_in direction people fuel gear rows water grate standing_waves",
-        "notes": "load feed_in seconds water grate depth rows current wind",
-    }.items()
-    for name in names.split()
-)
-_OUTCOMES_NOT_YET = ("planed", "would_not_plane")
 _DAY = re.compile(r"((?:19|20|21)\d\d)-(\d\d)-(\d\d)(?:[T ][\d:.+Z-]*)?", re.ASCII)
 _UNWRITABLE = re.compile("[\x00-\x1f\x7f-\x9f\u2028\u2029\u202a-\u202e\u2066-\u2069\ud800-\udfff]")
 _DECIMAL = re.compile(r"[+-]?(?:\d+[.,]?\d*|[.,]\d+)", re.ASCII)
@@ -515,6 +910,9 @@ class _Reader:
         notes = enumerate(self.notes(case))
         values["notes"] = [self.part("notes", f"notes[{i}]", note) for i, note in notes]
         self.boat(values["boat"])
+        self.hull(values["boat"])
+        for i, note in enumerate(values["notes"]):
+            self.launched(f"notes[{i}]", note, values["boat"])
         self.one_of("plan", ("rpm", "power", "throttle"), "rpm, power or share")
         for path, place in (
             ("place", values["place"]),
@@ -556,8 +954,6 @@ class _Reader:
             if field:
                 if given is not None:  # a null is left out
                     self.one(field, key, given, values)
-            elif isinstance(name, str) and f"{part}.{name}" in NOT_YET:
-                self.fail(key, given, "", "Not yet: a later version takes this. Leave it out.")
             else:
                 self.fail(key, given, "", "Leave this out: there is no such reading.")
         for name, field in table.items():
@@ -604,6 +1000,56 @@ class _Reader:
                 under = f"under {ring}" if most == 1.0 else f"under {most:.0%} of {ring}".replace("%", " %")
                 action = f"It must be smaller than the wear ring's bore, {ring}. Measure both again."
                 self.fail(f"boat.{name}", self.given[f"boat.{name}"], under, action)
+
+    def hull(self, boat: Values) -> None:
+        """Engine and hull readings that go together; typical ones follow the beam."""
+        for name, other in (("high_rpm", "high_altitude"), ("high_altitude", "high_rpm")):
+            if f"boat.{name}" in self.given and f"boat.{other}" not in self.given:
+                field = FIELD[f"boat.{other}"]
+                self.fail(field.key, None, allowed_text(field), f"Fill this in as well. {field.measure}")
+        low, high = boat.get("wide_open_altitude"), boat.get("high_altitude")
+        if low is not None and high is not None and high - low < HIGH_APART:
+            far = units.show(HIGH_APART, "altitude", self.units.get("altitude", "m"))
+            self.fail(
+                "boat.high_altitude",
+                self.given["boat.high_altitude"],
+                f"{far} or more above the first",
+                "So close to the first it says nothing. Leave both out.",
+            )
+        if boat.get("aspiration") == "boosted" and "boat.critical_altitude" not in self.given:
+            field = FIELD["boat.critical_altitude"]
+            self.fail(field.key, None, allowed_text(field), f"Fill this in. {field.measure}")
+        beam = boat.get("chine_beam")
+        if beam is None:
+            return
+        length = boat.setdefault("hull_length", LENGTH_OVER_BEAM * beam)
+        boat.setdefault("centre_of_gravity", DRY_SHARE * length)
+        for name, least, most in (
+            ("hull_length", 1.5 * beam, 8.0 * beam),
+            ("centre_of_gravity", 0.1 * length, 0.8 * length),
+        ):
+            if not least <= boat[name] <= most:
+                unit = self.units.get("length", "m")
+                self.fail(
+                    f"boat.{name}",
+                    self.given.get(f"boat.{name}"),
+                    units.allowed("length", least, most, unit),
+                    "It does not go with the beam and the length given. Measure again.",
+                )
+
+    def launched(self, path: str, note: Values, boat: Values) -> None:
+        """What a note of a launch needs beside its rpm."""
+        if note.get("outcome") not in ("planed", "would_not_plane"):
+            return
+        needed = ["load", "seconds", "feed_in"] if note["outcome"] == "planed" else ["load"]
+        for name in needed:
+            key = f"{path}.{name}"
+            if name not in note and key not in self.given:
+                field = FIELD[f"notes.{name}"]
+                self.fail(key, None, allowed_text(field), f"Fill this in. {field.measure}")
+        if note.get("boat_speed"):
+            key = f"{path}.boat_speed"
+            self.fail(key, self.given[key], "0", "A launch starts from standing. Leave the boat speed out.")
 
     def one_of(self, path: str, names: tuple[str, ...], words: str) -> None:
         for name in [name for name in names if f"{path}.{name}" in self.given][1:]:
@@ -658,9 +1104,7 @@ def _count(field: Field, given: Any) -> tuple[int, str]:
 def _choice(field: Field, given: Any) -> tuple[str, str]:
     if isinstance(given, str) and given in field.choices:
         return given, given.replace("_", " ")
-    later = field.key == "notes.outcome" and isinstance(given, str) and given in _OUTCOMES_NOT_YET
-    action = "Not yet: a later version takes this one." if later else "Choose one of these."
-    raise BadReading("", "", ", ".join(field.choices), action)
+    raise BadReading("", "", ", ".join(field.choices), "Choose one of these.")
 
 
 def _text(field: Field, given: Any) -> tuple[str, str]:
@@ -705,12 +1149,24 @@ def allowed_text(field: Field, symbol: str | None = None) -> str:
     return "" if math.isinf(field.low) else f"{field.low:g} to {field.high:g}"
 
 
+_FOLLOWS = {
+    "boat.hub_diameter": "a third of the wear ring's bore",
+    "boat.jets_running": "all jets",
+    "boat.hull_length": "3.2 times the beam",
+    "boat.centre_of_gravity": "0.37 of the length",
+    "boat.intake_height": "the wear ring's bore",
+    "place.air_temperature": "the standard one",
+    "place.depth": "deep",
+    "notes.depth": "deep",
+    "plan.feed_in": "the advised one",
+    "plan.direction": "both",
+}
+
+
 def default_text(field: Field) -> str:
     """What stands in for a field that is left out, in words."""
-    if field.key == "boat.hub_diameter":
-        return "a third of the wear ring's bore"
-    if field.key == "boat.jets_running":
-        return "all jets"
+    if field.key in _FOLLOWS:
+        return _FOLLOWS[field.key]
     if field.default is None:
         return ""
     if field.kind in units.QUANTITIES:

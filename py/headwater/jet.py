@@ -68,6 +68,18 @@ def unit(
     )
 
 
+def blocked(unit: Unit, grate_loss: Any) -> Unit:
+    """A unit with something on its grate.
+
+    :param grate_loss: K_grate on the velocity head ahead of the impeller, added to K_b [-]
+    Source: loss coefficients add [D].
+    """
+    over = unit.nozzle_area / unit.inlet_area
+    return unit._replace(
+        intake_loss=unit.intake_loss + grate_loss, outlet_factor=unit.outlet_factor + grate_loss * over**2
+    )
+
+
 def absorption(engine_power: Any, wide_open_rpm: Any, jets: Any) -> Any:
     """What one unit absorbs, over engine rpm cubed: P = c N^3.
 

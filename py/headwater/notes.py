@@ -14,6 +14,7 @@ from headwater.suction import S_FROM_DIMENSIONLESS
 # Prior: ln omega_ss uniform, deliberately wide, so that it never makes a go by itself [P].
 PRIOR_LOW, PRIOR_HIGH = math.log(2 * S_FROM_DIMENSIONLESS), math.log(30 * S_FROM_DIMENSIONLESS)
 GRID = 400
+_DRAG_GRID = 161
 OLDER_SIGMA = 0.25  # one sigma in ln S of a note of an older pump set-up [P]
 FLARE_RATIO = 1.25  # NPSH ratio of the flare line while none has been seen [P]
 FLARE_EASE = 0.90  # of the lowest flared rpm, where nothing has held yet [P]
@@ -185,3 +186,51 @@ def crossed(bounds: Sequence[Bound]) -> set[int]:
     """Notes that bound from below over the lowest bound from above; contradicted, they prove nothing."""
     lid = lowest_above(bounds)
     return {bound.note for bound in bounds if lid and bound.below and bound.x > lid.x}
+
+
+# The drag of the hull, learned from launches in the same way
+
+
+class Mark(NamedTuple):
+    """One launch as a measure of ln allowance on the drag, or as a bound on it from below."""
+
+    x: float  # ln allowance
+    sigma: float  # one sigma
+    measured: bool  # she planed in so many seconds; else she would not plane, and it is a bound
+
+
+def learn_allowance(prior: tuple[float, float, float], marks: Sequence[Mark]) -> Belief:
+    """Posterior of ln allowance: a two-piece normal prior times each launch's likelihood, on a grid.
+
+    :param prior: low, middle and high of its 95 % span, as an allowance
+    Source: Bayes' rule with normal scatter [D]; the prior [P].
+    """
+    low, middle, high = (math.log(value) for value in prior)
+    start = min([low, *(mark.x for mark in marks)]) - 0.5
+    step = (max([high, *(mark.x for mark in marks)]) + 0.5 - start) / (_DRAG_GRID - 1)
+    weights = []
+    for k in range(_DRAG_GRID):
+        x = start + k * step
+        spread = (high - middle if x > middle else middle - low) / DISAGREE_SIGMAS
+        weight = exp(-0.5 * ((x - middle) / spread) ** 2)
+        for mark in marks:
+            z = (x - mark.x) / mark.sigma
+            weight *= exp(-0.5 * z * z) if mark.measured else 0.5 * erfc(-z * _ROOT_HALF)
+        weights.append(weight + 1e-300)
+    return Belief(start, step, weights)
+
+
+def allowance_followed(prior: tuple[float, float, float], marks: Sequence[Mark], share: float) -> list[float]:
+    """How far a quantile of the allowance follows each launch, d quantile / d x, by learning with it moved.
+
+    :param prior: as for :func:`learn_allowance`
+    :param share: of the quantile
+    """
+    found = []
+    for i, mark in enumerate(marks):
+        down, up = (
+            learn_allowance(prior, [*marks[:i], mark._replace(x=mark.x + side * mark.sigma), *marks[i + 1 :]])
+            for side in (-0.5, 0.5)
+        )
+        found.append((up.quantile(share) - down.quantile(share)) / mark.sigma)
+    return found

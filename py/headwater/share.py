@@ -1,13 +1,14 @@
 """A case as the fragment of a link, and back: versioned, short, with a check on its end.
 
-``1.`` then base64url of raw deflate over compact JSON, then six letters of CRC-32. Keys are shortened by
-version 1's own table. A reading typed as version 1's default goes as an empty list; one left out stays out,
+``2.`` then base64url of raw deflate over compact JSON, then six letters of CRC-32. Keys are shortened by the
+version's own table. A reading typed as that version's default goes as an empty list; one left out stays out,
 and where a later program has another default the old one is written in, so that a link goes on meaning what
-it meant.
+it meant. Version 1 knew the check alone, version 2 the launch as well.
 """
 
 import base64
 import json
+import math
 import re
 import zlib
 from collections.abc import Callable, Mapping
@@ -16,7 +17,7 @@ from typing import Any
 from headwater.errors import BadReading, quote
 from headwater.fields import FIELD
 
-VERSION = 1
+VERSION = 2
 LONGEST = 8000  # characters of a fragment
 _MOST_BYTES = 64_000  # of a case once unpacked
 _DEEPEST = 4  # case, notes, note, typed default
@@ -24,9 +25,9 @@ _CHECK = 6  # characters
 _FRAGMENT = re.compile(r"(\d{1,4})(?:\.([\w-]*))?", re.ASCII)
 _BRACKETS = re.compile(r'"(?:[^"\\]|\\.)*"|[\[\]{}]')
 
-# Frozen, all four: a link made today must open for ever. A change of any makes a new version.
+# Frozen, all of them: a link made today must open for ever. A change of any makes a new version.
 _PARTS = {"b": "boat", "p": "place", "n": "plan", "s": "notes"}
-_NAMES = {
+_CHECK_NAMES = {
     "l": "label",
     "d": "date",
     "j": "jets",
@@ -60,7 +61,40 @@ _NAMES = {
     "af": "altitude_from",
     "su": "set_up",
 }
-_DEFAULTS: dict[str, dict[str, Any]] = {
+_LAUNCH_NAMES = {
+    "wa": "wide_open_altitude",
+    "as": "aspiration",
+    "ca": "critical_altitude",
+    "hr": "high_rpm",
+    "ha": "high_altitude",
+    "b": "chine_beam",
+    "m": "dry_mass",
+    "hl": "hull_length",
+    "dr": "deadrise",
+    "cg": "centre_of_gravity",
+    "ih": "intake_height",
+    "ll": "load_limit",
+    "ro": "room",
+    "c": "current",
+    "be": "below",
+    "dp": "depth",
+    "wi": "wind",
+    "at": "air_temperature",
+    "hu": "humidity",
+    "pp": "people",
+    "ge": "gear",
+    "fu": "fuel",
+    "rw": "rows",
+    "di": "direction",
+    "f": "feed_in",
+    "wt": "water",
+    "gr": "grate",
+    "sw": "standing_waves",
+    "lo": "load",
+    "s": "seconds",
+}
+_NAMES = {1: _CHECK_NAMES, 2: _CHECK_NAMES | _LAUNCH_NAMES}
+_CHECK_DEFAULTS: dict[str, dict[str, Any]] = {
     "boat": {
         "jets": 1,
         "rpm_from": "seen",
@@ -76,6 +110,24 @@ _DEFAULTS: dict[str, dict[str, Any]] = {
     "plan": {"reserve": 1.10},
     "notes": {},
 }
+_LAUNCH_DEFAULTS: dict[str, dict[str, Any]] = {
+    "boat": {"wide_open_altitude": 0.0, "aspiration": "natural", "deadrise": math.radians(10.0)},
+    "place": {"current": 0.0, "wind": "calm", "humidity": 0.0},
+    "plan": {
+        "people": 0,
+        "gear": 0.0,
+        "fuel": 0.0,
+        "rows": "middle",
+        "water": "clear",
+        "grate": "clean",
+        "standing_waves": "no",
+    },
+    "notes": {"rows": "middle", "wind": "calm", "water": "clear", "grate": "clean"},
+}
+_DEFAULTS = {
+    1: _CHECK_DEFAULTS,
+    2: {part: usual | _LAUNCH_DEFAULTS[part] for part, usual in _CHECK_DEFAULTS.items()},
+}
 _USUAL = (  # what most links hold, for deflate to point at; likeliest last
     b'"jr":2,"rf":"papers","g":1.0,"pe":0.8,"ss":"re":"th":"80 %","p":" kW"},"sp":" inHg"," hPa","q":"29."'
     b' km/h"," kn"," m/s","o":"flared","r":"," C"},{" m","t":" K"," in","h":" cm","sd":"0.'
@@ -84,7 +136,7 @@ _USUAL = (  # what most links hold, for deflate to point at; likeliest last
     b'"s":[{"l":"","d":"2026-0","o":"held","r":"3,000 rpm","v":"0 mph","a":"1,000 ft","t":"54 F"},'
     b'{"l":"","d":"2026-0","o":"let_go","r":"3,000 rpm","v":"0 mph","a":"1,000 ft","t":"54 F"}]}'
 )
-_SHORT = {name: short for short, name in _NAMES.items()}
+_SHORT = {name: short for short, name in _NAMES[VERSION].items()}
 _NOT_OURS = "This is not a link of Headwater."
 _CUT = "This link was cut or changed on its way. Ask for it again."
 _UNKNOWN = "This link holds something that is not understood here. Update the app, then open it again."
@@ -113,7 +165,7 @@ def encode(case: Any) -> str:
     body = _letters(deflate.compress(text) + deflate.flush())
     if len(text) > _MOST_BYTES or len(body) > LONGEST - 10:
         raise _bad("This case is too long for a link. Send fewer notes.")
-    return f"{VERSION}.{body}{_check(body)}"
+    return f"{VERSION}.{body}{_check(VERSION, body)}"
 
 
 def decode(fragment: Any) -> dict[str, Any]:
@@ -131,7 +183,7 @@ def decode(fragment: Any) -> dict[str, Any]:
     if version > VERSION:
         raise _bad("This link comes from a newer version. Update the app, then open it again.")
     body, check = (match[2] or "")[:-_CHECK], (match[2] or "")[-_CHECK:]
-    if not body or _check(body) != check:
+    if not body or _check(version, body) != check:
         raise _bad(_CUT)
     packed = _unpacked(body)
     if not isinstance(packed, dict):
@@ -141,11 +193,13 @@ def decode(fragment: Any) -> dict[str, Any]:
         part = _PARTS.get(short)
         if part is None:
             raise _bad(_UNKNOWN)
-        case[part] = _each(part, content, _unpack)
-    for part, usual in _DEFAULTS.items():
-        for name, value in usual.items():
-            if FIELD[f"{part}.{name}"].default != value:
-                case[part] = {name: value} | (case.get(part) or {})
+        case[part] = _each(part, content, lambda part, content: _unpack(version, part, content))
+    for part, usual in _DEFAULTS[version].items():
+        old = {name: value for name, value in usual.items() if FIELD[f"{part}.{name}"].default != value}
+        if old and part == "notes":
+            case[part] = [old | note for note in case.get(part) or []]
+        elif old:
+            case[part] = old | (case.get(part) or {})
     return case
 
 
@@ -164,7 +218,7 @@ def _pack(part: str, content: Any) -> dict[str, Any]:
     for name, value in content.items():
         if name not in _SHORT or f"{part}.{name}" not in FIELD or not _plain(value):
             raise _bad(f"{part}.{quote(name)} cannot go into a link.")
-    usual = _DEFAULTS[part]
+    usual = _DEFAULTS[VERSION][part]
     return {
         short: [] if _same(usual.get(name), content[name]) else content[name]
         for name, short in _SHORT.items()
@@ -172,15 +226,15 @@ def _pack(part: str, content: Any) -> dict[str, Any]:
     }
 
 
-def _unpack(part: str, content: Any) -> dict[str, Any]:
+def _unpack(version: int, part: str, content: Any) -> dict[str, Any]:
     if not isinstance(content, dict):
         raise _bad(_UNKNOWN)
     out = {}
     for short, value in content.items():
-        name = _NAMES.get(short, "")
+        name = _NAMES[version].get(short, "")
         if f"{part}.{name}" not in FIELD:
             raise _bad(_UNKNOWN)
-        out[name] = _DEFAULTS[part].get(name, value) if value == [] else value
+        out[name] = _DEFAULTS[version][part].get(name, value) if value == [] else value
         if not _plain(out[name]):
             raise _bad(_UNKNOWN)
     return out
@@ -217,8 +271,8 @@ def _same(usual: Any, value: Any) -> bool:
     return usual is not None and type(usual) is type(value) and usual == value
 
 
-def _check(body: str) -> str:
-    return _letters(zlib.crc32(f"{VERSION}.{body}".encode()).to_bytes(4, "big"))
+def _check(version: int, body: str) -> str:
+    return _letters(zlib.crc32(f"{version}.{body}".encode()).to_bytes(4, "big"))
 
 
 def _letters(raw: bytes) -> str:

@@ -29,6 +29,12 @@ SOURCES = {
         Source("eslamdoost2018", "Eslamdoost et al. 2018, Ocean Eng. 152", "S"),
         Source("npsh", "Definition of NPSH and of suction specific speed", "D"),
         Source("learned", "Bayes' rule on the notes, flat prior in ln S", "D"),
+        Source("iso1585", "ISO 1585 / UN R85, power correction of engines", "V"),
+        Source("savitsky1964", "Savitsky 1964, Marine Technology 1; ITTC-57 friction line", "V"),
+        Source("blount1976", "Blount and Fox 1976, hump factor", "V"),
+        Source("inertia", "Momentum of the water column in the intake", "D"),
+        Source("boyle", "Boyle's law on the air in the water", "D"),
+        Source("elsey", "Elsey, Pumps & Systems; Murakami and Minemura 1974", "S"),
         Source("reserve", "ANSI/HI 9.6.1, margins of 1.1 to 1.3, in secondary sources", "S"),
         Source(
             "si",

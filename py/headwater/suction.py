@@ -40,6 +40,25 @@ def head_at_rest(air_pressure: Any, vapor_pressure: Any, density: Any, submergen
     return (air_pressure - vapor_pressure) / (density * GRAVITY) + submergence
 
 
+def grate_loss(blocked: Any) -> Any:
+    """Loss coefficient of a grate that is partly blocked, K_grate on the V_1 head.
+
+    :param blocked: share of its area [-]
+    Source: sudden widening behind the free area [D].
+    """
+    return 0.10 * (1 / (1 - blocked) ** 2 - 1)
+
+
+def gas_share(surface_share: Any, expansion: Any) -> Any:
+    """Share of free gas at the impeller, phi_1.
+
+    :param surface_share: phi_0, at the surface [-]
+    :param expansion: air pressure over the static pressure ahead of the impeller [-]
+    Source: Boyle's law [D].
+    """
+    return surface_share * expansion / (1 - surface_share + surface_share * expansion)
+
+
 def inlet_loss(unit: Unit, inlet_speed: Any) -> Any:
     """Head that the intake takes.
 

@@ -60,6 +60,11 @@ QUANTITIES: dict[str, dict[str, Unit]] = {
         ("km", 1000.0, 0.0, 0.001, ""),
     ),
     "length": _table(*_LENGTHS),
+    "distance": _table(
+        ("m", 1.0, 0.0, 1.0, "metre metres meter meters"),
+        ("ft", _FT, 0.0, 1.0, "foot feet ' ′"),
+        ("yd", 3 * _FT, 0.0, 1.0, "yard yards"),
+    ),
     "head": _table(("m", 1.0, 0.0, 0.01, ""), ("ft", _FT, 0.0, 0.1, "")),
     "pressure": _table(
         ("hPa", 100.0, 0.0, 0.1, "hectopascal mbar mb millibar millibars"),
@@ -104,8 +109,8 @@ QUANTITIES: dict[str, dict[str, Unit]] = {
     "density": _table(("kg/m3", 1.0, 0.0, 0.1, "kg/m³")),
 }
 _SETS = {
-    "us": "F F ft in ft inHg hp mph rpm lb gal lbf deg % s gpm kg/m3",
-    "metric": "C C m mm m hPa kW km/h rpm kg l N deg % s l/s kg/m3",
+    "us": "F F ft in ft ft inHg hp mph rpm lb gal lbf deg % s gpm kg/m3",
+    "metric": "C C m mm m m hPa kW km/h rpm kg l N deg % s l/s kg/m3",
 }
 SYSTEMS = {name: dict(zip(QUANTITIES, symbols.split(), strict=True)) for name, symbols in _SETS.items()}
 

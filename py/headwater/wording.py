@@ -121,7 +121,75 @@ def _instruction(code: str, facts: Facts, say: _Say) -> str:
         return text + (f"; {say.rpm(facts['plan_rpm'])} from {say.from_speed(speed)}" if speed else "")
     if code == "under_idle":
         return "she holds less than idle here"
+    if code in _HINDERED:
+        return _HINDERED[code]
+    if code.startswith("launch_"):
+        return _launch_instruction(code, facts, say)
     return "no head left at the pump"
+
+
+_HINDERED = {
+    "grate": "engine off, clear the grate",
+    "air": "too much air in this water",
+    "standing_waves": "standing waves in the run",
+    "launch_white": "white water at the intake",
+    "launch_turn": "no room to turn",
+}
+_ROW_WORDS = {"middle": "in the middle", "front": "up front"}
+_WAY_WORDS = {"up": "up, against the current", "down": "down, with the current"}
+
+
+def _launch_instruction(code: str, facts: Facts, say: _Say) -> str:
+    """What to do on a launch: on a go how, else what would make it one, else what is in the way."""
+    launched = facts["launch"]
+    way = launched[launched["better"]]
+    if code == "launch_go":
+        room = say.show(way["distance_to_plane"]["value"], "distance", "up")
+        return f"feed it in over {say.show(way['feed_in'], 'time')}, on plane in {room}"
+    problem = {
+        "launch_over": "the pump lets go on this launch",
+        "launch_heavy": "too heavy for this water",
+        "launch_room": "not enough room",
+    }.get(code)
+    remedies = launched.get("remedies", [])
+    best = next((row for row in remedies if row["verdict"] == "go"), None)
+    if problem:
+        best = best or next((row for row in remedies if row["verdict"] == "caution"), None)
+        return f"{problem}; {remedy_words(best, say)}" if best else problem
+    if best:
+        return remedy_words(best, say)
+    return _launch_trouble(facts["why"], facts, way, say)
+
+
+def _launch_trouble(why: list[str], facts: Facts, way: Mapping[str, Any], say: _Say) -> str:
+    for code in why:
+        if code in _HINDERED:
+            return _HINDERED[code]
+    if "unknown" in why:
+        return "I don't know this pump yet"
+    if "may_not_plane" in why:
+        return "she may not plane"
+    if "room_tight" in why:
+        return "the room is tight"
+    if "shallow" in why:
+        return "shallow water, room not known"
+    if facts["standing_rpm"] is not None:
+        return "close to what the pump holds"
+    return "nothing has held yet"
+
+
+def remedy_words(row: Mapping[str, Any], say: _Say) -> str:
+    """A remedy as an instruction."""
+    code = row["code"]
+    if code == "feed_in":
+        return f"feed it in over {say.show(row['feed_in'], 'time')}"
+    if code == "direction":
+        return f"launch {_WAY_WORDS[row['direction']]}"
+    if code in ("less_rpm", "more_rpm"):
+        return f"run {say.holds(row['rpm'])}, fed in over {say.show(row['feed_in'], 'time')}"
+    if code == "forward":
+        return f"seat people {_ROW_WORDS[row['rows']]}"
+    return f"leave {say.show(row['less'], 'mass', 'up')} ashore"
 
 
 # Reasons and cautions
@@ -189,6 +257,17 @@ def _reason(code: str, facts: Facts, say: _Say) -> str:
         "papers": "Power and rpm are out of papers. Read the tach wide open, then plan in rpm.",
         "unknown": "No note of this pump as it is now.",
         "none_held": "No note says that she held so much.",
+        "white_water": "White water at the intake: the pump fills with air.",
+        "grate": "The grate is not clean. Engine off, clear it.",
+        "air": "Air in the water swells ahead of the impeller, to where it runs rough.",
+        "standing_waves": "Standing waves or a drop lift the stern out of the water.",
+        "shallow": "Under a metre of water the drag is not known. One launch timed there would tell.",
+        "never_planes": "On the middle estimate she does not get over the hump with this load.",
+        "over_room": "On the middle estimate she needs more than the whole room.",
+        "no_room_to_turn": "The room is less than she needs to turn away.",
+        "may_not_plane": "The hump is close: with a little more drag or less push she stays behind it.",
+        "room_tight": "The room is close: on the far side of the doubt she is not up in time.",
+        "both_tight": "Pump and room are each close; together they leave too much to chance.",
     }[code]
 
 
@@ -239,6 +318,12 @@ def _caution(code: str, facts: Facts, say: _Say) -> str:
         "fixed_disagrees": "A note disagrees with the S you fixed. The fixed one is used.",
         "barometer_at_water": "The barometer must show the pressure at the water. Add the altitude to check.",
         "papers": "Rpm and power are out of papers: the spans are wider.",
+        "never_holds": "At this rpm no feed-in keeps the pump within what it is known to hold.",
+        "shallow_drag": "Under a metre of water drag is higher, most where her own waves keep up with her.",
+        "gravel": "Shallow under the intake: standing at this power it lifts gravel. Move to deeper water.",
+        "room_unknown": "Room not given: compare what she needs with what you have.",
+        "engine_extrapolated": "Over 1,000 m the engine's power is reckoned past its standard. "
+        "Note wide open up here once.",
     }[code]
 
 
@@ -386,6 +471,7 @@ def sheet(answer: Mapping[str, Any], units: Units) -> dict[str, Any]:
         "others": {key: other for key, text in answer["understood"].items() if (other := _other(key, text))},
         "not_checked": NOT_CHECKED,
         "lets_go": LETS_GO,
+        "waits": False,
     }
     if errors:
         return common
@@ -395,11 +481,12 @@ def sheet(answer: Mapping[str, Any], units: Units) -> dict[str, Any]:
     return {
         **common,
         "lead": texts[0]["text"],
-        "lines": _lines(values, say),
+        "lines": _lines(values, say, bool(answer["launch"])),
         "ground": GROUND[answer["ground"]],
         "reasons": [row for row in texts[1:] if not row["code"].startswith("teach")],
         "teach": teach,
         "cautions": answer["cautions"],
+        "launch": launch_sheet(answer["launch"], say),
         "gauge": _gauge(values, say),
         "ledger": [_ledger_row(row, say) for row in answer["ledger"]],
         "movers": [
@@ -411,6 +498,117 @@ def sheet(answer: Mapping[str, Any], units: Units) -> dict[str, Any]:
         "working": _working(answer, say),
         "curve": _curve(answer["curve"], say),
     }
+
+
+def waiting() -> dict[str, Any]:
+    """What stands in a sheet in place of the verdict while the launch is worked out."""
+    return {"state": None, "headline": SCREEN["launch_working"], "waits": True}
+
+
+def launch_sheet(launched: Mapping[str, Any] | None, say: _Say) -> dict[str, Any] | None:
+    """The launch as strings; none where none was asked about."""
+    if not launched:
+        return None
+    way = launched[launched["better"]]
+    same = launched["up"]["ground_speed"] == launched["down"]["ground_speed"]
+    named = "" if same else launched["better"]
+    return {
+        "way": _WAY_WORDS[named] if named else "",
+        "lines": _launch_lines(way, say),
+        "schedule": {
+            "head": [f"GPS, {say.units['speed']}", "Rpm", f"After, {say.units['time']}"],
+            "rows": [_schedule_row(row, say) for row in way["schedule"]],
+        },
+        "abort": _abort(way, say),
+        "heaviest": _heaviest(way, say),
+        "remedies": [_remedy(row, say) for row in launched.get("remedies", [])],
+        "ways": [] if same else [_way_row(name, launched[name], say) for name in ("up", "down")],
+        "done": "remedies" in launched,
+    }
+
+
+def _launch_lines(way: Mapping[str, Any], say: _Say) -> list[dict[str, Any]]:
+    rows = [
+        {
+            "key": "feed_in",
+            "first": True,
+            "label": "Feed it in over",
+            "value": say.show(way["feed_in"], "time"),
+            "span": "",
+            "aside": f"to {say.holds(way['planned_rpm'])}",
+        }
+    ]
+    distance = way["distance_to_plane"]
+    rows.append({"key": "room", "first": True, "label": "On plane in", **_spanned(distance, "distance", say)})
+    rows.append(
+        {"key": "time", "first": False, "label": "Seconds", **_spanned(way["time_to_plane"], "time", say)}
+    )
+    if way["bow_high"] is not None:
+        rows.append(_line("bow", "Bow high for", say.show(way["bow_high"], "time")))
+    surplus = way["hump_surplus"]
+    rows.append(_line("hump", "Push over the hump", f"{round(100 * surplus['value'])} %"))
+    if way["room_for_plane"] is not None:
+        left = max(way["room_for_plane"], 0.0)
+        rows.append(_line("left", "Room for it, turn kept", say.show(left, "distance", "down")))
+    return rows
+
+
+def _line(key: str, label: str, value: str) -> dict[str, Any]:
+    return {"key": key, "first": False, "label": label, "value": value, "span": "", "aside": ""}
+
+
+def _spanned(value: Mapping[str, Any], quantity: str, say: _Say) -> dict[str, str]:
+    """A figure with its span; without a far side she may not plane, without a figure she does not."""
+    if value["value"] is None:
+        return {"value": "does not plane", "span": "", "aside": ""}
+    shown = say.show(value["value"], quantity, "up")
+    if value["high"] is None:
+        return {"value": shown, "span": "may not plane", "aside": ""}
+    return {"value": shown, "span": say.span(value["low"], value["high"], quantity), "aside": ""}
+
+
+def _schedule_row(row: Mapping[str, Any], say: _Say) -> list[str]:
+    speed = say.number(row["ground_speed"], "speed")
+    time = "then on" if row["time"] is None else say.number(row["time"], "time")
+    return [speed, say.number(row["rpm"], "rotation", "down"), time]
+
+
+def _abort(way: Mapping[str, Any], say: _Say) -> str:
+    if "abort_mark" not in way or way["distance_to_plane"]["value"] is None or way["room_for_plane"] is None:
+        return ""
+    mark = way["abort_mark"]
+    if mark is None:
+        return "On plane by half the room, else chop."
+    return f"Under {say.show(mark, 'speed', 'up')} by GPS at half the room: chop."
+
+
+def _heaviest(way: Mapping[str, Any], say: _Say) -> str:
+    if (
+        "heaviest_load" not in way
+        or way["room_for_plane"] is None
+        or way["distance_to_plane"]["value"] is None
+    ):
+        return ""
+    load = way["heaviest_load"]
+    if load is None:
+        return "Even empty she is not sure to be up in this room."
+    return f"Heaviest load for this room: {say.show(load, 'mass', 'down')} of people, fuel and gear."
+
+
+def _remedy(row: Mapping[str, Any], say: _Say) -> str:
+    words = remedy_words(row, say)
+    before, after = row["distance"]["before"], row["distance"]["after"]
+    text = words[:1].upper() + words[1:]
+    if after is not None:
+        was = "not planing" if before is None else say.show(before, "distance", "up")
+        text += f": {was} becomes {say.show(after, 'distance', 'up')}"
+    return f"{text}. {STATES[row['verdict']]}."
+
+
+def _way_row(name: str, way: Mapping[str, Any], say: _Say) -> list[str]:
+    distance = _spanned(way["distance_to_plane"], "distance", say)
+    room = f"{distance['value']} ({distance['span']})" if distance["span"] else distance["value"]
+    return [name, STATES[way["verdict"]], room]
 
 
 def _field_key(path: str) -> str:
@@ -438,7 +636,7 @@ def error_text(error: Mapping[str, Any]) -> str:
     return f"{given}{allowed}{error['action']}"
 
 
-def _lines(values: Mapping[str, Any], say: _Say) -> list[dict[str, Any]]:
+def _lines(values: Mapping[str, Any], say: _Say, launched: bool) -> list[dict[str, Any]]:
     """What she holds and where she lets go; ``first`` marks what stands in the answer itself."""
     rows: list[dict[str, Any]] = []
     for name, key, label in _LINES:
@@ -475,7 +673,7 @@ def _lines(values: Mapping[str, Any], say: _Say) -> list[dict[str, Any]]:
         rows.append(
             {
                 "key": "wide_open",
-                "first": True,
+                "first": not launched,  # feed-in and room take its place
                 "label": "Wide open from",
                 "value": say.from_speed(full["value"]),
                 "span": "",
@@ -526,13 +724,23 @@ def _ledger_row(row: Mapping[str, Any], say: _Say) -> dict[str, str]:
 
 
 def _equivalent(row: Mapping[str, Any], say: _Say) -> dict[str, Any]:
-    did = {"held": "Held", "flared": "Revs ran up at", "let_go": "Let go at"}[row["outcome"]]
+    did = {
+        "held": "Held",
+        "flared": "Revs ran up at",
+        "let_go": "Let go at",
+        "planed": "Planed at",
+        "would_not_plane": "Would not plane at",
+    }[row["outcome"]]
+    if row["outcome"] == "would_not_plane":
+        text = f"{did} {say.number(row['rpm_there'], 'rotation')}: it tells of the hull, not of the pump."
+        return {"note": row["note"], "text": text}
     if row["rpm_here"] is None:
         return {
             "note": row["note"],
             "text": f"{did} {say.number(row['rpm_there'], 'rotation')}: no telling here.",
         }
-    here = f"{say.rpm(row['rpm_here'])} here, {say.span(row['low'], row['high'], 'rotation')}"
+    asked = "its hardest moment asked as much as " if row["outcome"] == "planed" else ""
+    here = f"{asked}{say.rpm(row['rpm_here'])} here, {say.span(row['low'], row['high'], 'rotation')}"
     return {"note": row["note"], "text": f"{did} {say.number(row['rpm_there'], 'rotation')}: {here}."}
 
 
@@ -614,7 +822,7 @@ SCREEN = {
     "fine_hint": "Filled in already, marked typical. Change what you have measured.",
     "place_more": "Barometer, name, reserve",
     "how_hard": "How hard",
-    "how_hard_hint": "Empty: wide open.",
+    "how_hard_hint": "Empty: the most she takes.",
     "wide_open": "wide open",
     "unit_of": "Unit of",
     "units": "Units",
@@ -636,6 +844,17 @@ SCREEN = {
     "make_mine": "Make it mine",
     "make_mine_warns": "Your own boat and notes will be replaced. Go on?",
     "sent_close": "Close",
+    "launch": "The launch",
+    "launch_more": "Load, direction, water",
+    "launch_working": "Working out the launch",
+    "not_said": "–",
+    "hull": "Hull and weight, for the launch",
+    "hull_hint": "Beam and weight, and the launch is checked too. The rest is typical until measured.",
+    "note_launch": "Launch, load, grate and water then",
+    "schedule": "Rpm against speed",
+    "remedies": "What would help",
+    "remedies_wait": "Working out what would help.",
+    "ways": "Both ways",
     "lines": "Plan and revs",
     "reasons": "Why",
     "equivalents": "Your notes here",

@@ -29,7 +29,7 @@ def test_firefox_answers_on_a_first_visit_and_without_network(playwright, server
     page.wait_for_selector("#answer[data-state=go]", timeout=90_000)
     assert page.evaluate("fetch('not-kept').then(() => false, () => true)")
     page.fill("#place-altitude", "8202")
-    page.wait_for_selector("#answer[data-state=no-go]", timeout=30_000)
+    page.wait_for_selector("#answer[data-state=caution]", timeout=30_000)
     assert "is 3,230 here" in page.text_content("#lead")
     browser.close()
 
@@ -78,5 +78,5 @@ def test_webkit_answers_on_a_first_visit_and_without_network(webkit, server):
         "const e = document.querySelector('#place-altitude'); e.value = '8202';"
         "e.dispatchEvent(new Event('input', {bubbles: true}))"
     )
-    assert settle(answer_state, "no-go") == "no-go"
+    assert settle(answer_state, "caution") == "caution"
     assert "is 3,230 here" in read("#lead", "textContent")

@@ -6,7 +6,7 @@ import datetime
 import pytest
 
 from headwater import fields, units
-from headwater.fields import FIELD, FIELDS, NOT_YET, read
+from headwater.fields import FIELD, FIELDS, read
 from headwater.sources import SOURCES
 
 CASE = {
@@ -58,17 +58,15 @@ def only_error(case):
 # The table
 
 
-def test_every_key_of_the_case_is_read_now_or_refused_as_not_yet_never_both():
-    assert len(FIELD) == len(FIELDS) == 41
-    assert len(NOT_YET) == 37
-    assert not NOT_YET & set(FIELD)
+def test_every_key_of_the_case_is_read():
+    assert len(FIELD) == len(FIELDS) == 78
 
 
 def test_every_field_says_what_it_is_and_how_to_get_it():
     for field in FIELDS:
         assert field.label and field.meaning.endswith(".") and field.measure.endswith("."), field.key
         assert field.source in SOURCES, field.key
-        assert field.group in ("first", "notes", "fine"), field.key
+        assert field.group in ("first", "notes", "note_launch", "hull", "launch", "fine"), field.key
         assert len(set(field.choices)) == len(field.choices), field.key
 
 
@@ -175,7 +173,18 @@ def test_defaults_are_filled_in_and_are_not_given():
     assert boat["rpm_from"] == "seen"
     assert "suction_specific_speed" not in boat
     assert readings.values["place"]["altitude_from"] == "map"
-    assert readings.values["plan"] == {"rpm": 3050.0, "boat_speed": 0.0, "reserve": 1.10}
+    assert readings.values["plan"] == {
+        "rpm": 3050.0,
+        "boat_speed": 0.0,
+        "reserve": 1.10,
+        "people": 0,
+        "gear": 0.0,
+        "fuel": 0.0,
+        "rows": "middle",
+        "water": "clear",
+        "grate": "clean",
+        "standing_waves": "no",
+    }
     assert not {"boat.jets", "boat.hub_diameter", "plan.reserve"} & readings.given
 
 
@@ -289,19 +298,45 @@ def test_a_bare_number_for_a_quantity_with_a_unit_is_an_error_that_names_the_uni
     assert error["action"] == "Write it as text with its unit: m, ft, km."
 
 
-@pytest.mark.parametrize("key", sorted(NOT_YET))
-def test_what_comes_later_is_refused_by_name(key):
-    part, name = key.split(".")
-    error = only_error(changed(**{"note" if part == "notes" else part: {name: "1"}}))
-    assert error["field"] == (f"notes[0].{name}" if part == "notes" else key)
-    assert error["action"].startswith("Not yet")
+@pytest.mark.parametrize(
+    ("more", "field"),
+    [
+        ({"boat": {"aspiration": "boosted"}}, "boat.critical_altitude"),
+        ({"boat": {"high_rpm": 3800}}, "boat.high_altitude"),
+        ({"boat": {"high_altitude": "2000 m"}}, "boat.high_rpm"),
+        ({"boat": {"high_rpm": 3800, "high_altitude": "100 m"}}, "boat.high_altitude"),
+        ({"boat": {"chine_beam": "2 m", "hull_length": "2.6 m"}}, "boat.hull_length"),
+        ({"boat": {"chine_beam": "2 m", "centre_of_gravity": "6 m"}}, "boat.centre_of_gravity"),
+        (
+            {"note": {"outcome": "planed", "boat_speed": None, "load": "300 kg", "feed_in": "2 s"}},
+            "notes[0].seconds",
+        ),
+        ({"note": {"outcome": "would_not_plane", "boat_speed": None}}, "notes[0].load"),
+        (
+            {"note": {"outcome": "would_not_plane", "boat_speed": "9 mph", "load": "300 kg"}},
+            "notes[0].boat_speed",
+        ),
+    ],
+)
+def test_readings_that_need_each_other_are_asked_for(more, field):
+    error = only_error(changed(**more))
+    assert error["field"] == field
+    assert error["action"]
 
 
-@pytest.mark.parametrize("outcome", ["planed", "would_not_plane"])
-def test_outcomes_that_come_later_are_refused_as_not_yet(outcome):
-    error = only_error(changed(note={"outcome": outcome}))
-    assert error["allowed"] == "held, flared, let_go"
-    assert error["action"].startswith("Not yet")
+def test_a_launch_is_read_with_what_it_needs():
+    case = changed(
+        note={"outcome": "planed", "boat_speed": None, "load": "900 kg", "feed_in": "2 s", "seconds": "6 s"}
+    )
+    found = read(case)
+    assert found.errors == []
+    assert (found.values["notes"][0]["load"], found.values["notes"][0]["seconds"]) == (900.0, 6.0)
+
+
+def test_a_hull_s_length_and_balance_follow_its_beam():
+    boat = read(changed(boat={"chine_beam": "2 m"})).values["boat"]
+    assert boat["hull_length"] == pytest.approx(6.4)
+    assert boat["centre_of_gravity"] == pytest.approx(0.37 * 6.4)
 
 
 @pytest.mark.parametrize(

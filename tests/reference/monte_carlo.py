@@ -170,7 +170,12 @@ def draw(case, n=100_000, seed=1, lines=True):
             1 / 3
         ) * world.wide_open
     else:
-        rpm = np.full(n, plan.get("rpm", plan.get("throttle", 1.0) * boat["wide_open_rpm"]))
+        # ISO 1585 for a petrol engine in dry standard air, power as torque^e where it meets the jet.
+        standard = 288.15 * (pressure / 101325) ** 0.1902632
+        torque = (pressure / 101325) ** 1.2 * (288.15 / standard) ** 0.6
+        e = 1.25 + 0.25 / SIGMAS * rng.standard_normal(n)
+        rpm = plan.get("throttle", 1.0) * boat["wide_open_rpm"] * torque ** (e / 3)
+        rpm = np.full(n, plan["rpm"]) if "rpm" in plan else rpm
     rpm = rpm * (1 + 0.01 / SIGMAS * rng.standard_normal(n))
     state = world.state(rpm, speed, here, temperature)
 
