@@ -3,6 +3,7 @@
 import json
 import math
 from collections.abc import Callable, Iterable, Mapping, Sequence
+from functools import cached_property
 from typing import Any
 
 from headwater import air, engine, fields, hull, jet, launch, notes, share, suction, verdict, water, wording
@@ -509,8 +510,22 @@ class _Answer:
 
     def _allowed(self, speed: float) -> float:
         """The most ln S that is a go at a boat speed; as the curve has it."""
-        shares = _lagrange(min(speed, _NODES[-1]))
-        return sum(share * x for share, x in zip(shares, self.holding_nodes, strict=True))
+        v = min(speed, _NODES[-1])
+        a, b, c, d = self._allowed_cubic
+        return a + v * (b + v * (c + v * d))
+
+    @cached_property
+    def _allowed_cubic(self) -> tuple[float, float, float, float]:
+        """Coefficients of the cubic through the nodes, by divided differences."""
+        table, rows = list(self.holding_nodes), []
+        for order in range(len(_NODES)):
+            rows.append(table[0])
+            table = [
+                (table[i + 1] - table[i]) / (_NODES[i + order + 1] - _NODES[i]) for i in range(len(table) - 1)
+            ]
+        f0, f1, f2, f3 = rows
+        _, p, q, _ = _NODES  # the first is 0
+        return f0, f1 - p * f2 + p * q * f3, f2 - (p + q) * f3, f3
 
     # Lines and curve
 

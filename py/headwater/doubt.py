@@ -16,7 +16,7 @@ from headwater import jet, notes, suction, water
 from headwater.jet import GRAVITY
 from headwater.notes import Bound
 from headwater.suction import State
-from headwater.tried import RPM_SCATTER, SIGMAS, Held, Tries
+from headwater.tried import RPM_SCATTER, SIGMAS, STILL, Held, Tries
 
 # 95 % half-widths of what is not an input of its own [P].
 TACH_SCALE = 0.02  # of the tach, relative; common to notes and plan
@@ -283,7 +283,9 @@ class Reckoning:
                 at = self.centre if key in LAUNCH_KEYS else setting(moved)
                 allowances: list[float] = []
                 asked_by: dict[int, float | None] = {}
-                if tries:
+                if tries and key in STILL:
+                    allowances, asked_by = tries.still(at.submergence, at.tach)
+                elif tries:
                     allowances, asked_by = tries.again(moved, at.clean, at.submergence, at.tach, self.marks)
                 xs = [asked_by[note.note] if note.planed else seen_asked(at, note) for note in self.seen]
                 self.ends.append(End(key, moved, at, plan_rpm(moved), xs, allowances))

@@ -115,17 +115,18 @@ def jet_speed(unit: Unit, power: Any, boat_speed: Any, density: Any) -> Any:
     return balance(unit.outlet_factor, ram(unit, boat_speed), drive)
 
 
-def balance(outlet_factor: Any, ram: Any, drive: Any) -> Any:
+def balance(outlet_factor: Any, ram: Any, drive: Any, steps: int = _NEWTON_STEPS) -> Any:
     """The jet speed at which a V_j^3 - r V_j = q: what the jet takes is what the engine gives.
 
     :param outlet_factor: a = 1 + psi + K_b (A_n/A_1)^2 [-]
     :param ram: r, see :func:`ram` [m2/s2]
     :param drive: q = 2 eta P/(rho A_n), over 0 [m3/s3]
+    :param steps: of Newton's method
     :returns: [m/s]
     Source: power balance of one unit, a cubic [D]; its root by Newton's method in a fixed number of steps.
     """
     x = ((drive / outlet_factor) ** (2 / 3) + ram / outlet_factor) ** 0.5  # never below the root
-    for _ in range(_NEWTON_STEPS):
+    for _ in range(steps):
         xx = outlet_factor * x * x
         x = (2 * xx * x + drive) / (3 * xx - ram)
     return x

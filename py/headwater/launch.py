@@ -17,6 +17,8 @@ INTAKE_LENGTH = (0.3, 0.6, 1.0)  # L of the water column in the intake: low, mid
 ADDED_MASS = 1.05  # of the boat with the water that she drags along [P]
 STALL = 0.005  # acceleration under which she gains no more [m/s2] [P]
 LONGEST = 180.0  # a run takes no longer [s] [P]
+_NEWTON_STEPS = 2  # of the jet's speed: within 1e-6 at the speeds of a launch
+_HAIR = 1e-6  # m/s, to count as on plane with the last step
 _STEP = 0.2  # while the throttle opens [s]
 _MOST_STEPS = 30  # the same, where it opens slowly and little changes in a step
 _PANELS = 24  # of boat speed once it has settled; even
@@ -152,7 +154,7 @@ def thrust(craft: Craft, rpm: float, speed: float) -> tuple[float, float]:
     unit = craft.unit
     inflow = unit.wake_share * speed
     drive = 2 * unit.efficiency * unit.absorption * rpm**3 / (craft.density * unit.nozzle_area)
-    v_j = jet.balance(unit.outlet_factor, unit.ram_share * inflow * inflow, drive)
+    v_j = jet.balance(unit.outlet_factor, unit.ram_share * inflow * inflow, drive, _NEWTON_STEPS)
     push = craft.jets * craft.thrust_share * craft.density * unit.nozzle_area
     return push * v_j * (v_j - inflow), v_j
 
@@ -216,26 +218,21 @@ def run(craft: Craft, rpm: float, feed_in: float, opening_alone: bool = False, f
         faster = max(v + (push - resistance(craft, half)) / mass * dt, 0.0)
         if v < craft.drag.first <= faster:
             first_at = t + dt * (craft.drag.first - v) / (faster - v)
-        if v < plane <= faster:
+        if v < plane <= faster or (k == steps - 1 and v < plane < faster + _HAIR):
             share = (plane - v) / (faster - v)
             planed_at = t + share * dt, x + share * dt * (v + plane) / 2
         t, x, v = t + dt, x + half * dt, faster
     if opening_alone:
         return found
-    surplus = _surplus(craft, rpm, min(v, plane))
     if planed_at[0] < math.inf:
         return found._replace(
             planed=True,
             time_to_plane=planed_at[0],
             distance_to_plane=planed_at[1],
-            surplus=surplus,
+            surplus=_surplus(craft, rpm),
             bow_high=planed_at[0] - first_at,
         )
-    if v >= plane:  # on plane with the last step
-        return found._replace(
-            planed=True, time_to_plane=t, distance_to_plane=x, surplus=surplus, bow_high=t - min(first_at, t)
-        )
-    return _settled(found, craft, rpm, t, x, v, first_at, fine)._replace(surplus=surplus)
+    return _settled(found, craft, rpm, t, x, v, first_at, fine)
 
 
 def _settled(
@@ -247,10 +244,14 @@ def _settled(
     step = (plane - v) / panels
     slow = 0.0  # time a metre per second more takes, at the last even node
     odd = (0.0, 0.0)
-    for k in range(panels + 1):
-        speed = v + k * step
-        push, v_j = thrust(craft, rpm, speed)
-        gained = (push - resistance(craft, speed)) / mass
+    speeds = [v + k * step for k in range(panels + 1)]
+    pushes = [thrust(craft, rpm, speed) for speed in speeds]
+    against = [resistance(craft, speed) for speed in speeds]
+    surplus = min(push / drag - 1 for (push, _), drag in zip(pushes, against, strict=True))
+    found = found._replace(surplus=surplus)
+    for k, speed in enumerate(speeds):
+        push, v_j = pushes[k]
+        gained = (push - against[k]) / mass
         if gained < STALL:
             return found
         if k % 2:
@@ -280,14 +281,10 @@ def _note(
     found.asked.append(asked(craft, n, v, v_j, opening, gain))
 
 
-def _surplus(craft: Craft, rpm: float, start: float) -> float:
-    """Least of (thrust - drag)/drag from a speed to the plane."""
-    least = math.inf
-    for speed in (*craft.drag.speeds, craft.drag.plane):
-        if start <= speed <= craft.drag.plane:
-            against = resistance(craft, speed)
-            least = min(least, thrust(craft, rpm, speed)[0] / against - 1)
-    return least
+def _surplus(craft: Craft, rpm: float) -> float:
+    """Least of (thrust - drag)/drag over the hump, for a run that is over it while the throttle opens."""
+    speeds = [speed for speed in craft.drag.speeds if speed <= craft.drag.plane]
+    return min(thrust(craft, rpm, speed)[0] / resistance(craft, speed) - 1 for speed in speeds)
 
 
 def critical_allowance(craft: Craft, rpm: float) -> float:

@@ -12,7 +12,7 @@ from headwater import hull, launch, notes
 from headwater.doubt import HIGH, LOW, MIDDLE, Inputs, Judged, Reckoning, Setting, reach, setting
 from headwater.jet import GRAVITY
 from headwater.launch import Craft, Outing, Run
-from headwater.tried import DRAG_AGAIN, FEED_BY_HAND, RPM_SCATTER, SIGMAS, WEIGHT, Tries
+from headwater.tried import DRAG_AGAIN, FEED_BY_HAND, RPM_SCATTER, SIGMAS, STILL, WEIGHT, Tries
 
 LONGEST_FEED = 15.0  # s; past it the advice is less rpm [P]
 _SLACK = 0.012  # in ln S, kept in a search for the doubt that only the whole attempt knows
@@ -29,7 +29,7 @@ _CLIFF_STEP = 1.0  # in ln distance, for an end under which she never planes
 _LOAD_TRIALS = 9
 _MOST_LOAD = 4.0  # times the dry boat, searched
 # Inputs that move the head alone, not how she runs.
-_HEAD_ONLY = frozenset(("boat.shaft_depth", "pressure_error", "place.water_temperature", "tach"))
+_HEAD_ONLY = STILL - {"gas"}
 
 
 class Site(NamedTuple):

@@ -20,6 +20,10 @@ FEED_BY_HAND = 0.5  # of a feed-in [s]
 WEIGHT = 0.05  # of each weight, relative
 SECONDS = 0.15  # of the seconds to plane, relative
 SIGMAS = 1.959964  # of a 95 % half-width
+# Inputs that move the head or the reading alone, not how a launch of the past ran.
+STILL = frozenset(
+    ("boat.shaft_depth", "pressure_error", "place.water_temperature", "tach", "engine_exponent", "gas")
+)
 _MASS_POWER = 1.3  # of the drag at the hump over mass, for the error of a load [D]
 
 
@@ -42,6 +46,7 @@ class Held(NamedTuple):
 
     x: float  # ln S asked
     sigma: float  # one sigma
+    head: float  # NPSH available [m]
     boat_speed: float  # [m/s]
     flow_per_rpm: float  # Q/N [m3 min/s]
 
@@ -59,6 +64,7 @@ class Tries:
         self._tables: dict[tuple[float, float, float], Drag] = {}
         self._instants: dict[int, int] = {}  # the hardest of each launch that planed
         self._crafts: dict[int, Craft] = {}
+        self._known: dict[int, Held] = {}
         self._slopes: dict[int, float] = {}  # of ln seconds over ln allowance
 
     def craft(
@@ -143,7 +149,21 @@ class Tries:
             sigma = math.hypot(DRAG_AGAIN, by_load, SECONDS / slope, by_feed / slope, by_rpm / slope) / SIGMAS
             marks.append(Mark(math.log(allowance), sigma, True))
             held[made.note] = self._held(made, found, faster, slower)
+        self._known, self._depth, self._tach = held, depth, tach
         return marks, held
+
+    def still(self, depth: float, tach: float) -> tuple[list[float], dict[int, float | None]]:
+        """The same as :meth:`again` where an input moves the head or the reading alone.
+
+        :param depth: z [m]
+        :param tach: true rpm over rpm read
+        """
+        asked: dict[int, float | None] = {}
+        for note, held in self._known.items():
+            after = held.head + depth - self._depth
+            by_reading = math.log(tach / self._tach)
+            asked[note] = held.x + by_reading - 0.75 * math.log(after / held.head) if after > 0 else None
+        return [0.0] * len(self.made), asked
 
     def _held(self, made: Launched, found: Run, faster: Run, slower: Run) -> Held:
         k = self._instants[made.note] = launch.hardest(found)
@@ -152,7 +172,7 @@ class Tries:
         by_rpm = abs(faster.asked[launch.hardest(faster)] - x) / 2
         by_feed = abs(slower.asked[launch.hardest(slower)] - x) / SIGMAS
         sigma = math.hypot(by_rpm, by_feed, 0.75 * made.head_sigma / head)
-        return Held(x, sigma, found.boat_speed[k], flow / n)
+        return Held(x, sigma, head, found.boat_speed[k], flow / n)
 
     def again(
         self, inputs: Mapping[str, float], unit: Unit, depth: float, tach: float, marks: Sequence[Mark]
