@@ -6,6 +6,7 @@ import { at, data, screen } from "./data.js";
 import { bindForm } from "./form.js";
 import { caseOf, empty, isEmpty, modelOf } from "./model.js";
 import { paintLast, paintSheet } from "./paint.js";
+import { bindSlip } from "./slip.js";
 import { keep, keepsNothing, recall } from "./store.js";
 
 /** @typedef {"own" | "demo" | "sent"} Mode */
@@ -29,6 +30,7 @@ const core = connect(data.links, {
   onFatal: (message, again) => fault(again ? screen.fatal : `${screen.fatal_end} (${message})`, !again),
 });
 const form = bindForm({ model, changed, convert });
+const slip = bindSlip({ model, ask: (request) => core.ask(request), save: () => mode !== "sent" && keep(mode, model()) });
 const offline = register({ onState: paintOffline, onWaiting: offerUpdate });
 
 /** The core turns a typed figure into another unit. @param {string} field @param {string} text @param {string} unit */
@@ -120,6 +122,7 @@ function enter(next) {
   at("demo-foot").hidden = mode === "demo";
   at("sent").hidden = mode !== "sent";
   form.fill();
+  slip.fill();
   form.lock(mode === "sent");
   if (mode !== "sent") keep("mode", mode);
   paintLast(undefined);

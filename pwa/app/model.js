@@ -5,7 +5,7 @@ import { data, fields } from "./data.js";
 /**
  * @typedef {{text: string, unit?: string}} Typed
  * @typedef {{[key: string]: Typed}} Part
- * @typedef {{version: 1, units: {[quantity: string]: string}, readings: Part, notes: Part[]}} Model
+ * @typedef {{version: 1, units: {[quantity: string]: string}, readings: Part, notes: Part[], slip?: {[place: string]: string}}} Model
  */
 
 /** @returns {Model} */
@@ -53,7 +53,12 @@ function valueOf(key, typed) {
   if (!text || !field) return undefined;
   if (field.kind === "flag") return text === "yes" ? true : undefined;
   if (field.units.length === 0) return text;
-  return /[a-z°%"'″′]/i.test(text) ? text : `${text} ${typed.unit ?? field.units[0]}`; // a typed unit wins
+  return withUnit(text, typed.unit ?? field.units[0]);
+}
+
+/** A figure with its unit; a typed unit wins. @param {string} text @param {string} unit */
+export function withUnit(text, unit) {
+  return /[a-z°%"'″′]/i.test(text) ? text : `${text} ${unit}`;
 }
 
 /** The model of a case that came by link or as the demo. @param {import("./data.js").Case} given @returns {Model} */

@@ -7,6 +7,7 @@ import os
 import sys
 import textwrap
 from collections.abc import Sequence
+from itertools import zip_longest
 from typing import Any
 
 from headwater import __version__
@@ -28,6 +29,13 @@ def main(argv: Sequence[str] | None = None) -> int:
     check.add_argument("--json", action="store_true", help="the whole answer, for programs")
     check.add_argument("--units", choices=("us", "metric"), help="units of the sentences; else as typed")
     check.set_defaults(run=_check)
+    slip = commands.add_parser("slip", help="whether she slips: rpm seen against rpm expected")
+    slip.add_argument("case", help="a JSON file, or - for standard input")
+    slip.add_argument("--rpm", action="append", required=True, help="seen here; again for a second reading")
+    slip.add_argument("--share", action="append", default=[], help="of the power, for each rpm; wide open")
+    slip.add_argument("--speed", action="append", default=[], help="boat speed, for each rpm")
+    slip.add_argument("--json", action="store_true", help="for programs")
+    slip.set_defaults(run=_slip)
     fields = commands.add_parser("fields", help="list every reading")
     fields.add_argument("--markdown", action="store_true", help="as a Markdown table")
     fields.set_defaults(run=_fields)
@@ -152,6 +160,20 @@ def _launch_words(launch: dict[str, Any]) -> list[str]:
 
 def _wrap(text: str, indent: str = "") -> list[str]:
     return textwrap.wrap(text, _WIDTH, initial_indent=indent, subsequent_indent=2 * indent)
+
+
+def _slip(options: argparse.Namespace) -> int:
+    from headwater.answer import slipping
+
+    rows = zip_longest(options.rpm, options.share, options.speed)
+    seen = [{"rpm": rpm, "share": share, "boat_speed": speed} for rpm, share, speed in rows]
+    found = slipping(_read_case(options.case), seen)
+    if options.json:
+        print(json.dumps(found, indent=1, allow_nan=False, ensure_ascii=False))
+    else:
+        lines = [f"{row['field']}: {row['text']}" for row in found["errors"]] or found["text"]
+        print("\n".join(line for text in lines for line in _wrap(text)))
+    return 2 if found["errors"] else 0
 
 
 def _fields(options: argparse.Namespace) -> int:

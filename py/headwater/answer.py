@@ -2,66 +2,55 @@
 
 import json
 import math
-from collections.abc import Callable, Iterable, Mapping, Sequence
+from collections.abc import Callable, Mapping, Sequence
 from functools import cached_property
 from typing import Any
 
-from headwater import air, engine, fields, hull, jet, launch, notes, share, suction, verdict, water, wording
+from headwater import air, engine, fields, jet, notes, share, slip, suction, verdict, water, wording
 from headwater.doubt import (
     HIGH,
     LOW,
     MIDDLE,
-    PAPERS_POWER,
     PAPERS_RPM,
-    TACH_SCALE,
     THRUST_DEDUCTION,
     Holding,
     Inputs,
     Line,
     Reckoning,
-    Seen,
     Setting,
     absorption,
     setting,
     spread,
 )
-from headwater.errors import BadReading
+from headwater.errors import BadReading, quote
 from headwater.fields import FIELD, Readings
+from headwater.inputs import (
+    LAUNCHES,
+    engine_exponent,
+    inputs_of,
+    older,
+    pressure_doubt,
+    seen_of,
+    spans_of,
+    tries_of,
+    wide_open_here,
+)
 from headwater.jet import GRAVITY
-from headwater.launch import Outing, Shape
 from headwater.notes import Bound
 from headwater.outing import GAS_STOP, Outlook, flags, gas
 from headwater.suction import State
-from headwater.tried import RPM_SCATTER, SIGMAS, WEIGHT, Launched, Tries
+from headwater.tried import RPM_SCATTER, SIGMAS
 from headwater.units import QUANTITIES as UNITS
+from headwater.units import parse
 from headwater.verdict import Decision
 
 CONTRACT = 1
-LAUNCHES = ("planed", "would_not_plane")  # outcomes
-BLOCKED = {"clean": 0.0, "weed": 0.25, "stick": 0.5}  # share of the grate [D]
-# Free gas at the surface, low, middle and high [P].
-GAS = {
-    "clear": (0.0, 0.0, 0.0),
-    "fizzy": (0.001, 0.0022, 0.005),
-    "aerated": (0.005, 0.0122, 0.03),
-    "white": (0.03, 0.05, 0.10),
-}
-_FACTORS_APART = 0.02  # in ln torque factor, that two wide-open rpm tell of the engine
-_GUESSED_BALANCE = 0.03  # of the length, 95 % half-width of a balance point that was not measured [P]
 CURVE_SPEEDS = [float(v) for v in range(26)]  # m/s
 _NODES = (0.0, 8.0, 16.0, 25.0)  # m/s, where the curve's limits and bands are worked out in full
 _NODE_PASSES = 1  # rounds in finding a node's holding rpm, from where the node before it holds
 # Head over boiling at sea level in 15 C water [m], for the share of what she holds there.
 _SEA_LEVEL_HEAD = suction.head_at_rest(
     air.STANDARD_PRESSURE, water.vapor_pressure(288.15), water.density(288.15), 0.0
-)
-_COEFFICIENTS = (
-    "boat.wake_fraction",
-    "boat.ram_loss",
-    "boat.intake_loss",
-    "boat.nozzle_loss",
-    "boat.pump_efficiency",
-    "boat.driveline_efficiency",
 )
 # What the movers try, and by how much: a round step in the person's own unit, by quantity and unit.
 _MOVER_STEPS = {
@@ -128,241 +117,6 @@ def _load(text: str) -> Any:
 
 def _dump(value: Any) -> str:
     return json.dumps(value, allow_nan=False, ensure_ascii=False, separators=(",", ":"))
-
-
-def air_pressure(place: Mapping[str, Any]) -> float:
-    """Pressure at the water from a place's or a note's readings [Pa]."""
-    if "station_pressure" in place:
-        return float(place["station_pressure"])
-    if "altimeter_setting" in place:
-        return float(air.station_pressure(place["altimeter_setting"], place["altitude"]))
-    return float(air.standard_pressure(place["altitude"]))
-
-
-def pressure_doubt(place: Mapping[str, Any]) -> float:
-    """95 % half-width of the pressure at the water [Pa]: the barometer's, the altitude's, or both."""
-    barometer = FIELD["place.station_pressure"].tolerance
-    if "station_pressure" in place:
-        return float(barometer)
-    altitude = place["altitude"]
-    reach = FIELD["place.altitude"].tolerance
-    if place.get("altitude_from") == "phone":
-        reach = fields.PHONE_ALTITUDE
-    by_altitude = (air.standard_pressure(altitude - reach) - air.standard_pressure(altitude + reach)) / 2
-    return math.hypot(by_altitude, barometer) if "altimeter_setting" in place else float(by_altitude)
-
-
-def inputs_of(values: Mapping[str, Any]) -> Inputs:
-    """Central inputs by key, SI, from the readings of a case."""
-    boat, place = values["boat"], values["place"]
-    inputs = {key: float(boat[key.partition(".")[2]]) for key in _COEFFICIENTS}
-    for key in (
-        "jets",
-        "nozzle_diameter",
-        "impeller_diameter",
-        "shaft_depth",
-        "wide_open_rpm",
-        "engine_power",
-        "gear_ratio",
-    ):
-        inputs["boat." + key] = float(boat[key])
-    inputs["hub_share"] = boat["hub_diameter"] / boat["impeller_diameter"]
-    inputs["place.air_pressure"] = pressure = air_pressure(place)
-    inputs["place.water_temperature"] = float(place["water_temperature"])
-    inputs["pressure_error"] = 0.0
-    inputs["tach"] = 1.0
-    inputs["grate_loss"] = suction.grate_loss(BLOCKED[values["plan"]["grate"]])
-    inputs["gas"], inputs["expansion"] = GAS[values["plan"]["water"]][1], 1.0
-    warm = place.get("air_temperature", air.temperature_at_pressure(pressure))
-    here = engine_factor(boat, pressure, warm, place["humidity"])
-    there = engine_factor_at(boat, boat["wide_open_altitude"])
-    inputs["engine_here"], inputs["engine_there"] = here, there
-    inputs["engine_exponent"] = engine_exponent(boat, there)[1]
-    if "chine_beam" in boat and "dry_mass" in boat:
-        for key in ("dry_mass", "chine_beam", "centre_of_gravity"):
-            inputs["boat." + key] = float(boat[key])
-        inputs["thrust_deduction"] = THRUST_DEDUCTION[1]
-        inputs["intake_length"] = launch.INTAKE_LENGTH[1]
-    return inputs
-
-
-def engine_factor(boat: Mapping[str, Any], pressure: float, temperature: float, humidity: float) -> float:
-    """Torque here over that in dry standard air at sea level."""
-    critical = boat.get("critical_altitude", 0.0)
-    return float(engine.torque_factor(boat["aspiration"], pressure, temperature, humidity, critical))
-
-
-def engine_factor_at(boat: Mapping[str, Any], altitude: float) -> float:
-    """The same in dry standard air at an altitude."""
-    pressure = float(air.standard_pressure(altitude))
-    return engine_factor(boat, pressure, air.temperature_at_pressure(pressure), 0.0)
-
-
-def engine_exponent(boat: Mapping[str, Any], there: float) -> tuple[float, float, float]:
-    """Exponent of power over torque factor, low, middle and high; from a wide-open rpm read up high if given.
-
-    :param there: torque factor where the wide-open rpm was read
-    """
-    if "high_rpm" in boat and "high_altitude" in boat:
-        high = engine_factor_at(boat, boat["high_altitude"])
-        if abs(math.log(high / there)) > _FACTORS_APART:
-            found = float(engine.exponent_seen(boat["wide_open_rpm"], boat["high_rpm"], there, high))
-            reach = 3 * math.sqrt(2) * RPM_SCATTER / abs(math.log(high / there))
-            return found - reach, found, found + reach
-    return engine.EXPONENT
-
-
-def wide_open_here(inputs: Inputs) -> float:
-    """Engine rpm that she turns wide open here [1/min]."""
-    there, here = inputs["engine_there"], inputs["engine_here"]
-    return float(engine.wide_open_rpm(inputs["boat.wide_open_rpm"], there, here, inputs["engine_exponent"]))
-
-
-def spans_of(
-    values: Mapping[str, Any], given: Iterable[str], inputs: Inputs
-) -> dict[str, tuple[float, float]]:
-    """Low and high end of each uncertain input (95 % span), by key, SI."""
-    boat, papers = values["boat"], values["boat"]["rpm_from"] == "papers"
-    spans = {}
-    for key in _COEFFICIENTS:
-        field, here = FIELD[key], inputs[key]
-        assert field.span and field.default
-        low, high = (here * end / field.default for end in field.span)
-        spans[key] = (max(low, field.low), min(high, field.high))
-    # Pump and driveline act as one efficiency: their spans in quadrature, moved together.
-    pump, driveline = spans["boat.pump_efficiency"], spans.pop("boat.driveline_efficiency")
-    here, other = inputs["boat.pump_efficiency"], inputs["boat.driveline_efficiency"]
-    low, high = (math.hypot(math.log(pump[k] / here), math.log(driveline[k] / other)) for k in (0, 1))
-    spans["boat.pump_efficiency"] = (here * math.exp(-low), here * math.exp(high))
-    for key in ("boat.nozzle_diameter", "boat.impeller_diameter"):
-        spans[key] = _about(inputs[key], FIELD[key].tolerance)
-    hub = FIELD["boat.hub_diameter"]
-    if "boat.hub_diameter" in given:
-        spans["hub_share"] = _about(inputs["hub_share"], hub.tolerance)
-    else:
-        spans["hub_share"] = fields.HUB_SHARE
-    depth = FIELD["boat.shaft_depth"].tolerance
-    spans["boat.shaft_depth"] = (boat["shaft_depth"] - depth, boat["shaft_depth"] + depth)
-    power = PAPERS_POWER if papers else FIELD["boat.engine_power"].tolerance
-    spans["boat.engine_power"] = _about(inputs["boat.engine_power"], power)
-    spans["boat.wide_open_rpm"] = _about(inputs["boat.wide_open_rpm"], PAPERS_RPM if papers else RPM_SCATTER)
-    warm = FIELD["place.water_temperature"].tolerance
-    here = inputs["place.water_temperature"]
-    spans["place.water_temperature"] = (max(here - warm, 273.15), here + warm)
-    doubt = pressure_doubt(values["place"])
-    spans["pressure_error"] = (-doubt, doubt)
-    if inputs["engine_here"] != inputs["engine_there"]:
-        low, _, high = engine_exponent(boat, inputs["engine_there"])
-        spans["engine_exponent"] = (low, high)
-    if inputs["gas"]:
-        spans["gas"] = (GAS[values["plan"]["water"]][0], GAS[values["plan"]["water"]][2])
-    if "boat.dry_mass" in inputs:
-        spans["boat.dry_mass"] = _about(inputs["boat.dry_mass"], WEIGHT)
-        spans["boat.chine_beam"] = _about(inputs["boat.chine_beam"], FIELD["boat.chine_beam"].tolerance)
-        measured = "boat.centre_of_gravity" in given
-        reach = FIELD["boat.centre_of_gravity"].tolerance if measured else _GUESSED_BALANCE
-        balance, far = inputs["boat.centre_of_gravity"], reach * boat["hull_length"]
-        spans["boat.centre_of_gravity"] = (balance - far, balance + far)
-        spans["thrust_deduction"] = (THRUST_DEDUCTION[0], THRUST_DEDUCTION[2])
-        spans["intake_length"] = (launch.INTAKE_LENGTH[0], launch.INTAKE_LENGTH[2])
-    if "suction_specific_speed" in boat:  # else the tach's scale is common to notes and plan and cancels
-        spans["tach"] = (1 - TACH_SCALE, 1 + TACH_SCALE)
-    return spans
-
-
-def _about(value: float, share: float) -> tuple[float, float]:
-    return value * (1 - share), value * (1 + share)
-
-
-def older(boat: Mapping[str, Any], note: Mapping[str, Any]) -> bool:
-    """Whether a note belongs to an older pump set-up than today's."""
-    if "set_up" in note:
-        return bool(note["set_up"] != boat.get("date"))
-    return "date" in note and "date" in boat and bool(note["date"] < boat["date"])
-
-
-def seen_of(values: Mapping[str, Any]) -> list[Seen]:
-    """The notes that count, ready for physics; one without a boat speed proves nothing and is left out.
-
-    One that let go, or whose revs ran up, in froth or with a grate that was not clean is a hint only: it may
-    have been the air. A launch that planed counts where the hull is known.
-    """
-    place, seen = values["place"], []
-    hull_known = "chine_beam" in values["boat"] and "dry_mass" in values["boat"]
-    for index, note in enumerate(values["notes"]):
-        planed = note["outcome"] == "planed" and hull_known
-        if not planed and (note["outcome"] in LAUNCHES or "boat_speed" not in note):
-            continue
-        clean = note["water"] == "clear" and note["grate"] == "clean"
-        temperature = note["water_temperature"]
-        density = water.density(temperature)
-        warm = FIELD["place.water_temperature"].tolerance
-        by_heat = (water.vapor_pressure(temperature + warm) - water.vapor_pressure(temperature)) / (
-            density * GRAVITY
-        )
-        here = _altitude_alone(note) is not None and _altitude_alone(note) == _altitude_alone(place)
-        by_air = 0.0 if here else pressure_doubt(note) / (density * GRAVITY)
-        seen.append(
-            Seen(
-                index,
-                "held" if planed else note["outcome"],
-                note["rpm"],
-                0.0 if planed else note["boat_speed"],
-                air_pressure(note),
-                water.vapor_pressure(temperature),
-                density,
-                math.hypot(by_heat, by_air) / SIGMAS,
-                here,
-                older(values["boat"], note) or (not clean and note["outcome"] != "held"),
-                clean,
-                planed,
-            )
-        )
-    return seen
-
-
-def tries_of(values: Mapping[str, Any]) -> Tries | None:
-    """The launches that were made with today's set-up, where the hull is known."""
-    boat, place = values["boat"], values["place"]
-    if "chine_beam" not in boat or "dry_mass" not in boat:
-        return None
-    temperature = place["water_temperature"]
-    pressure = air_pressure(place)
-    warm = place.get("air_temperature", air.temperature_at_pressure(pressure))
-    shape = Shape(
-        boat["hull_length"],
-        math.degrees(boat["deadrise"]),
-        water.density(temperature),
-        water.viscosity(temperature),
-        pressure / (air.GAS_CONSTANT * warm),
-    )
-    made, doubts = [], {seen.note: seen for seen in seen_of(values)}
-    for index, note in enumerate(values["notes"]):
-        if note["outcome"] not in LAUNCHES or note["water"] != "clear" or note["grate"] != "clean":
-            continue
-        planed = note["outcome"] == "planed"
-        density = water.density(note["water_temperature"])
-        head = (air_pressure(note) - water.vapor_pressure(note["water_temperature"])) / (density * GRAVITY)
-        made.append(
-            Launched(
-                index,
-                note["rpm"],
-                note.get("feed_in", 0.0),
-                note["seconds"] if planed else None,
-                Outing(((note["load"], hull.ROWS[note["rows"]]),), hull.WINDS[note["wind"]]),
-                density,
-                head,
-                doubts[index].head_sigma if planed else 0.0,
-                note.get("depth", math.inf) < hull.SHALLOW,
-            )
-        )
-    return Tries(shape, boat["jets"], made)
-
-
-def _altitude_alone(place: Mapping[str, Any]) -> float | None:
-    if "station_pressure" in place or "altimeter_setting" in place:
-        return None
-    return float(place["altitude"])
 
 
 def _value(
@@ -1018,11 +772,86 @@ def _shown(case: Any, units: str | Mapping[str, str] | None, depth: int) -> dict
     return {"answer": result, "sheet": sheet}
 
 
+def slipping(case: Any, seen: Any, units: str | Mapping[str, str] | None = None) -> dict[str, Any]:
+    """Rpm seen at a place against what the boat should turn there.
+
+    :param case: readings by key, as for :func:`answer`; its plan is not looked at
+    :param seen: rows with ``rpm``, and ``share`` of the power or ``boat_speed`` where known, as typed
+    :param units: as for :func:`answer`
+    :returns: one row for each, the cause, or errors
+    Raises nothing: bad readings come back in ``errors``, all at once.
+    """
+    readings = fields.read(case)
+    errors, rows = list(readings.errors), []
+    for index, row in enumerate(seen if isinstance(seen, list) else []):
+        rows.append(_seen_row(index, row if isinstance(row, Mapping) else {}, errors))
+    if not rows:
+        errors.append(BadReading("seen", "", "", "Give the rpm that you see.").as_dict())
+    if errors:
+        told = [{**error, "text": wording.error_text(error)} for error in errors]
+        return {"rows": [], "cause": "unknown", "errors": told, "text": []}
+    chosen, values = wording.units_for(readings, units), readings.values
+    boat, inputs = values["boat"], inputs_of(values)
+    low, _, high = engine_exponent(boat, inputs["engine_there"])
+    ends = sorted(wide_open_here({**inputs, "engine_exponent": e}) for e in (low, high))
+    wide_open = ends[0], wide_open_here(inputs), ends[1]
+    doubt = PAPERS_RPM if boat["rpm_from"] == "papers" else RPM_SCATTER
+    pairs = [
+        (note["boat_speed"], note["rpm"])
+        for note in values["notes"]
+        if note["outcome"] == "held" and note.get("boat_speed") and not older(boat, note)
+    ]
+    out, judged = [], []
+    for given in rows:
+        speed = given.get("boat_speed")
+        by_pairs = slip.expected_by_pairs(pairs, speed) if speed else None
+        expected = by_pairs or slip.expected_wide_open(wide_open, given.get("share", 1.0), doubt)
+        found = slip.judge(given["rpm"], expected[1], expected[0], expected[2])
+        judged.append(slip.Seen(found, f"{speed}"))
+        made = {
+            "rpm": given["rpm"],
+            "expected": _value(expected[1], "rev/min", expected[0], expected[2], "P"),
+            "by": "pairs" if by_pairs else "engine",
+            "factor": _value(found.factor, "1", found.low, found.high, "P"),
+            "absorbed": slip.absorbed_power_ratio(found.factor),
+            "code": found.code,
+            "under": found.under,
+        }
+        out.append({**made, "text": wording.slip_text(made, chosen)})
+    cause = slip.cause(judged)
+    high_side = any(row.slip.low > 1 for row in judged)
+    text = [row["text"] for row in out] + ([wording.SLIP_CAUSES[cause]] if high_side else [])
+    return {"rows": out, "cause": cause, "errors": [], "text": text}
+
+
+_SEEN_KINDS = {
+    "rpm": ("rotation", 100.0, 12000.0),
+    "share": ("share", 0.1, 1.0),
+    "boat_speed": ("speed", 0.0, 25.0),
+}
+
+
+def _seen_row(index: int, row: Mapping[str, Any], errors: list[dict[str, str]]) -> dict[str, float]:
+    """One row of rpm seen, SI; what is wrong goes to the errors."""
+    out: dict[str, float] = {}
+    for name, (kind, low, high) in _SEEN_KINDS.items():
+        given = row.get(name)
+        if given is None and name != "rpm":
+            continue
+        try:
+            out[name] = parse(given, kind, low, high).value
+        except BadReading as bad:
+            errors.append(
+                BadReading(f"seen[{index}].{name}", quote(given), bad.allowed, bad.action).as_dict()
+            )
+    return out
+
+
 def reply(text: str) -> str:
     """The phone's door: a request as JSON text, its reply as JSON text. Never raises.
 
-    Asks: ``check`` a case, make a ``link`` of one, ``open`` a link's fragment, say what a typed reading is
-    ``shown`` as in its field's other common unit.
+    Asks: ``check`` a case, whether she does ``slip``, make a ``link`` of a case, ``open`` a link's fragment,
+    say what a typed reading is ``shown`` as in its field's other common unit.
     """
     request = _load(text)
     if not isinstance(request, dict):
@@ -1032,6 +861,8 @@ def reply(text: str) -> str:
         if ask == "check":
             depth = request.get("depth", WHOLE)
             return _dump(_shown(request.get("case"), request.get("units"), depth))
+        if ask == "slip":
+            return _dump(slipping(request.get("case"), request.get("seen"), request.get("units")))
         if ask == "link":
             return _dump({"fragment": share.encode(request.get("case"))})
         if ask == "open":
@@ -1047,4 +878,4 @@ def reply(text: str) -> str:
             )
     except BadReading as bad:
         return _dump({"error": {**bad.as_dict(), "text": wording.error_text(bad.as_dict())}})
-    return _dump({"error": {"field": "ask", "text": "Ask to check, link, open or shown."}})
+    return _dump({"error": {"field": "ask", "text": "Ask to check, slip, link, open or shown."}})

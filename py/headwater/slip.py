@@ -11,8 +11,10 @@ from typing import Any, NamedTuple
 from headwater.tried import RPM_SCATTER
 
 SLIPPING = 1.03  # of rpm seen over expected, low side, from where she slips for certain [P]
+SHARE_DOUBT = 0.05  # of a share of the power, relative [P]
+SPEED_DOUBT = 0.03  # of a speed by GPS through the water, relative [P]
+NEAR_PAIR = 0.15  # of a logged speed, within which one pair tells [P]
 LETS_GO_EASE = 200.0  # rpm lower to feed in again once it let go, after idle [P]
-LETS_GO_COUNT = 2  # to count at idle before that [P]
 
 
 class Slip(NamedTuple):
@@ -55,6 +57,49 @@ def absorbed_power_ratio(factor: Any) -> Any:
     Source: affinity law at the same engine power [D].
     """
     return factor**-3
+
+
+def expected_wide_open(
+    wide_open: tuple[float, float, float], share: float, rpm_doubt: float
+) -> tuple[float, float, float]:
+    """Engine rpm that a share of the power gives here, low, middle and high.
+
+    :param wide_open: engine rpm wide open here, low, middle and high, as the engine is known [1/min]
+    :param share: of the power wide open gives, 0 to 1
+    :param rpm_doubt: 95 % half-width of the wide-open rpm, relative
+    :returns: [1/min]
+    Source: :func:`expected_rpm`; a share is known to 5 % of the power [P].
+    """
+    low, middle, high = wide_open
+    held = 0.0 if share >= 1 else SHARE_DOUBT / 3
+    down = math.hypot(math.log(middle / low), rpm_doubt, held)
+    up = math.hypot(math.log(high / middle), rpm_doubt, held)
+    here = expected_rpm(share, 1.0) * middle
+    return here * math.exp(-down), here, here * math.exp(up)
+
+
+def expected_by_pairs(
+    pairs: Sequence[tuple[float, float]], boat_speed: float
+) -> tuple[float, float, float] | None:
+    """Engine rpm that the boat's own logged pairs of speed and rpm give at a speed; none where none is near.
+
+    :param pairs: boat speed [m/s] and engine rpm [1/min] of each
+    :param boat_speed: through the water [m/s]
+    :returns: low, middle and high [1/min]
+    Source: straight line between the pairs about it, else in step with the nearest [P].
+    """
+    under = max((pair for pair in pairs if pair[0] <= boat_speed), default=None)
+    over = min((pair for pair in pairs if pair[0] >= boat_speed), default=None)
+    if under and over:
+        part = (boat_speed - under[0]) / (over[0] - under[0]) if over[0] > under[0] else 0.0
+        here = under[1] + part * (over[1] - under[1])
+    else:
+        near = under or over
+        if near is None or abs(boat_speed / near[0] - 1) > NEAR_PAIR:
+            return None
+        here = near[1] * boat_speed / near[0]
+    reach = math.hypot(RPM_SCATTER, SPEED_DOUBT)
+    return here * math.exp(-reach), here, here * math.exp(reach)
 
 
 def judge(seen_rpm: float, expected_rpm: float, low: float, high: float) -> Slip:

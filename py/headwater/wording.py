@@ -5,7 +5,7 @@ import re
 from collections.abc import Iterable, Mapping
 from typing import Any
 
-from headwater import fields
+from headwater import fields, slip
 from headwater import units as unit_table
 from headwater.sources import SOURCES
 
@@ -14,7 +14,7 @@ Facts = Mapping[str, Any]
 
 STATES = {"go": "GO", "caution": "CAUTION", "no-go": "NO-GO"}
 NOT_CHECKED = "Not checked: the run, steering, engine, crew."
-LETS_GO = "Lets go? To idle, count two, feed in again 200 rpm lower."
+LETS_GO = f"Lets go? To idle, count two, feed in again {slip.LETS_GO_EASE:.0f} rpm lower."
 CAUTIONS_ALWAYS = (
     "Life jackets on, kill-switch lanyard clipped.",
     "Scout the run first.",
@@ -806,6 +806,32 @@ def _curve(curve: Mapping[str, Any], say: _Say) -> dict[str, Any]:
     return {"head": ["Boat speed", *(label for _, label in drawn)], "rows": rows}
 
 
+# Slip
+
+
+def slip_text(row: Mapping[str, Any], units: Units) -> str:
+    """What an rpm seen says of the pump."""
+    say = _Say(units)
+    seen, expected = say.number(row["rpm"], "rotation"), say.rpm(row["expected"]["value"])
+    span = say.span(row["expected"]["low"], row["expected"]["high"], "rotation")
+    ground = "your own log" if row["by"] == "pairs" else "her engine here"
+    text = f"{seen} against {expected} ({span}) by {ground}: "
+    if row["code"] == "within_reading":
+        return text + "within the reading."
+    if row["under"]:
+        return text + "fewer than she should turn. Engine weak, or something on the shaft?"
+    share = round(100 * row["absorbed"])
+    word = "she slips" if row["code"] == "slipping" else "more than the reading explains"
+    return text + f"{word}. The pump takes {share} % of what it should."
+
+
+SLIP_CAUSES = {
+    "air": "It changes with place or speed: air or vapour. Look at grate, seals and the water.",
+    "wear": "It is the same everywhere: ring or impeller is worn.",
+    "unknown": "Read it again elsewhere or at another speed: if it changes it is air, if not it is wear.",
+}
+
+
 # Every fixed sentence of the app, compiled into the page at build
 
 SCREEN = {
@@ -851,6 +877,12 @@ SCREEN = {
     "hull": "Hull and weight, for the launch",
     "hull_hint": "Beam and weight, and the launch is checked too. The rest is typical until measured.",
     "note_launch": "Launch, load, grate and water then",
+    "slip": "Does she slip?",
+    "slip_hint": "Rpm you see wide open, or at a share of the power, here. A second one elsewhere tells why.",
+    "slip_rpm": "Rpm seen",
+    "slip_share": "Share of power, %",
+    "slip_speed": "Boat speed",
+    "slip_again": "And once more",
     "schedule": "Rpm against speed",
     "remedies": "What would help",
     "remedies_wait": "Working out what would help.",
