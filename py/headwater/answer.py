@@ -37,7 +37,7 @@ from headwater.inputs import (
 )
 from headwater.jet import GRAVITY
 from headwater.notes import Bound
-from headwater.outing import GAS_STOP, Outlook, flags, gas
+from headwater.outing import Outlook, flags, foam
 from headwater.suction import State
 from headwater.tried import RPM_SCATTER, SIGMAS
 from headwater.units import QUANTITIES as UNITS
@@ -152,6 +152,7 @@ class _Answer:
         self.speed = float(self.plan["boat_speed"])
         self.typed = any(key in self.plan for key in ("power", "rpm", "throttle"))
         self.depth = depth
+        self.outlook: Outlook | None = None
         self.launching = _launching(readings)
         # A launch that planed counts as a note; to run it again takes a while: the steady part comes first.
         self.tries = tries_of(self.values) if depth > STEADY else None
@@ -169,10 +170,9 @@ class _Answer:
         self.shares = {"holding_rpm_share": self._share(0.5), "holding_power_share": self._share(1.5)}
         papers = self.boat["rpm_from"] == "papers" and "power" in self.plan
         holding_rpm = self.held_to.rpm if self.held_to else None
-        white = self.plan["water"] == "white" or gas(self.check)[0] > GAS_STOP
         self.decision = verdict.hindered(
             verdict.steady(self.check, self.typed, papers, holding_rpm),
-            white,
+            foam(self.values, self.check),
             flags(self.values, self.check),
         )
 
@@ -190,9 +190,14 @@ class _Answer:
         )
 
     def _expansion(self, inputs: Inputs) -> float:
-        """How many times air in the water has expanded ahead of the impeller, by clear water's pressure."""
-        at = setting({**inputs, "gas": 0.0})
-        state = suction.state(at.unit, at.head, at.density, self.plan_rpm(inputs), self.speed)
+        """How many times air in the water has expanded ahead of the impeller, by clear water's pressure.
+
+        At the plan; where none was typed at the most that is a go.
+        """
+        clear = self.reckon({**inputs, "gas": 0.0}, self.speed)
+        held = None if self.typed else clear.holding(self.speed)
+        at, rpm = clear.centre, min(held.rpm, clear.rpm) if held else clear.rpm
+        state = suction.state(at.unit, at.head, at.density, rpm, self.speed)
         ahead = suction.static_pressure(state, at.vapor_pressure, at.density)
         return float(inputs["place.air_pressure"] / ahead) if ahead > at.vapor_pressure else 1.0
 
@@ -241,13 +246,14 @@ class _Answer:
     def _launch(self, facts: dict[str, Any]) -> Decision:
         """Work the launch out, put it among the facts, and decide by it."""
         assert self.tries
-        outlook = Outlook(
+        self.outlook = outlook = Outlook(
             self.values,
             self.check,
             self.tries,
             self.wide_open,
             self._allowed if self.holding_nodes else None,
             facts["full_speed"],
+            self._cleaner,
         )
         launched = outlook.build()
         if self.depth == WHOLE:
@@ -261,6 +267,14 @@ class _Answer:
             self.check = self.check.replanned(outlook.planned.rpm)
             facts["plan_rpm"] = outlook.planned.rpm
         return outlook.ways[outlook.better].decision
+
+    def _cleaner(self) -> Outlook:
+        """The same launch in clear water with a clean grate."""
+        values = {**self.values, "plan": {**self.plan, "water": "clear", "grate": "clean"}}
+        other = _Answer(self.readings._replace(values=values), self.units, LAUNCH)
+        other.build()
+        assert other.outlook
+        return other.outlook
 
     def _allowed(self, speed: float) -> float:
         """The most ln S that is a go at a boat speed; as the curve has it."""

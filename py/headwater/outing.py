@@ -15,6 +15,7 @@ PERSON = 85.0  # kg [P]
 FUEL_DENSITY = 740.0  # kg/m3 [P]
 UNKNOWN_FEED = 4.0  # advised while nothing is known to hold [s] [P]
 GAS_CAUTION, GAS_STOP = 0.02, 0.04  # share of free gas at the impeller: rough, gas-bound [S]
+_CLEAN = {"grate": "clean", "water": "clear"}
 _SIGNS = {"up": -1, "down": 1}
 _LEAST_GAIN = 0.03  # of the room, for a remedy to be worth a word
 _RPM_APART = 25.0  # between two rpm that are not the same advice
@@ -51,6 +52,17 @@ def gas(check: Reckoning) -> tuple[float, float]:
     return suction.gas_share(inputs["gas"], expansion), suction.gas_share(most, expansion)
 
 
+def foam(values: Mapping[str, Any], check: Reckoning) -> str:
+    """Code of water with so much air that it stops any plan; empty if it has not.
+
+    :param values: readings of the case, SI
+    :param check: the steady check
+    """
+    if values["plan"]["water"] == "white":
+        return "white_water"
+    return "gas_bound" if gas(check)[0] > GAS_STOP else ""
+
+
 def flags(values: Mapping[str, Any], check: Reckoning) -> list[str]:
     """Codes of what forbids a go by itself, standing as on a launch.
 
@@ -76,6 +88,7 @@ class Outlook:
     :param wide_open: engine rpm wide open here [1/min]
     :param allowed: the most ln S that is a go, by boat speed; none where nothing is known to hold
     :param full_speed: boat speed from which wide open is a go [m/s]; none if never
+    :param cleaner: the same launch in clear water with a clean grate
     """
 
     def __init__(
@@ -86,8 +99,9 @@ class Outlook:
         wide_open: float,
         allowed: Callable[[float], float] | None,
         full_speed: float | None,
+        cleaner: Callable[[], "Outlook"],
     ) -> None:
-        self.values, self.check, self.tries = values, check, tries
+        self.values, self.check, self.tries, self.cleaner = values, check, tries, cleaner
         self.wide_open, self.allowed, self.full_speed = wide_open, allowed, full_speed
         self.boat, self.place, self.plan = (values[part] for part in ("boat", "place", "plan"))
         room = self.place.get("room")
@@ -169,7 +183,7 @@ class Outlook:
             best.run.planed,
             site.room is None or trial.ground(best.run, sign) <= site.room,
             room is None or room > 0,
-            self.plan["water"] == "white" or gas(check)[0] > GAS_STOP,
+            foam(self.values, check),
             [*flags(self.values, check), *self._shallow()],
         )
         decision = verdict.launch(made, check.stop_dropped, check.fixed is not None, check.today)
@@ -312,6 +326,9 @@ class Outlook:
             order = list(hull.ROWS)
             for rows_name in order[order.index(self.plan["rows"]) + 1 :]:
                 offer("forward", self._trial(rows_name), rpm, feed, way.name, {"rows": rows_name})
+        dirt = [name for name, clean in _CLEAN.items() if self.plan[name] != clean]
+        if dirt:
+            self._offer(rows, way, self.cleaner().ways[way.name], "cleaner", {"what": dirt})
         if best and best[0] > rpm:
             offer("more_rpm", self.trial, *best, way.name, {"rpm": best[0], "feed_in": best[1]})
         if self.load:

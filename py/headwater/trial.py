@@ -217,7 +217,13 @@ class Trial:
     def distance(self, attempt: Attempt, sign: int) -> Band:
         """Room she needs to get on plane, over ground."""
         slack = sign * _CURRENT_DOUBT * self.site.current * attempt.run.time_to_plane
-        return self._band(attempt, lambda run: self.ground(run, sign), slack)
+        band = self._band(attempt, lambda run: self.ground(run, sign), slack)
+        if band.high is None:
+            return band
+        # Near the hump the room grows faster than any one end tells: all of them together, each by its part.
+        far = launch.run(self._hard_craft(self.low_side(attempt, sign)), attempt.rpm, attempt.feed_in)
+        together = self.ground(far, sign) + abs(slack)
+        return band._replace(high=max(band.high, together) if far.planed else None)
 
     def time(self, attempt: Attempt) -> Band:
         """Seconds until on plane."""

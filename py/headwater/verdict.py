@@ -84,15 +84,15 @@ def steady(check: Reckoning, typed: bool, papers_power: bool, holding_rpm: float
     return Decision("caution", ground, "keep_to" if typed else "up_to", against)
 
 
-def hindered(decision: Decision, white: bool, flags: list[str]) -> Decision:
+def hindered(decision: Decision, foam: str, flags: list[str]) -> Decision:
     """A steady verdict in the light of grate and water.
 
     :param decision: the pump's alone
-    :param white: white water at the intake
+    :param foam: code of water with so much air that it stops any plan; empty if it has not
     :param flags: codes of what forbids a go by itself
     """
-    if white:
-        return Decision("no-go", "over", "launch_white", ["white_water"])
+    if foam:
+        return Decision("no-go", "over", foam, [foam])
     if flags and decision.verdict == "go":
         return Decision("caution", decision.ground, flags[0], flags)
     return decision
@@ -109,7 +109,7 @@ class Launching(NamedTuple):
     planes: bool  # under the best feed-in, on the central estimate
     fits: bool  # the same within the whole room
     room_to_turn: bool
-    white: bool  # white water at the intake
+    foam: str  # code of water with so much air that it stops any plan; empty if it has not
     flags: list[str]  # codes of what forbids a go by itself
 
 
@@ -121,8 +121,8 @@ def launch(made: Launching, stop_dropped: bool, fixed: bool, today: bool) -> Dec
     :param fixed: whether the person fixed S
     :param today: whether any note of today's pump set-up counts
     """
-    if made.white:
-        return Decision("no-go", "over", "launch_white", ["white_water"])
+    if made.foam:
+        return Decision("no-go", "over", made.foam, [made.foam])
     if not made.room_to_turn:
         return Decision("no-go", "over", "launch_turn", ["no_room_to_turn"])
     against = over(made.best, stop_dropped)

@@ -132,7 +132,8 @@ _HINDERED = {
     "grate": "engine off, clear the grate",
     "air": "too much air in this water",
     "standing_waves": "standing waves in the run",
-    "launch_white": "white water at the intake",
+    "white_water": "white water at the intake",
+    "gas_bound": "too much air in this water",
     "launch_turn": "no room to turn",
 }
 _ROW_WORDS = {"middle": "in the middle", "front": "up front"}
@@ -187,6 +188,9 @@ def remedy_words(row: Mapping[str, Any], say: _Say) -> str:
         return f"launch {_WAY_WORDS[row['direction']]}"
     if code in ("less_rpm", "more_rpm"):
         return f"run {say.holds(row['rpm'])}, fed in over {say.show(row['feed_in'], 'time')}"
+    if code == "cleaner":
+        words = {"grate": "engine off, clear the grate", "water": "find clear water"}
+        return ", then ".join(words[name] for name in row["what"])
     if code == "forward":
         return f"seat people {_ROW_WORDS[row['rows']]}"
     return f"leave {say.show(row['less'], 'mass', 'up')} ashore"
@@ -258,6 +262,7 @@ def _reason(code: str, facts: Facts, say: _Say) -> str:
         "unknown": "No note of this pump as it is now.",
         "none_held": "No note says that she held so much.",
         "white_water": "White water at the intake: the pump fills with air.",
+        "gas_bound": "Air in the water swells ahead of the impeller, to where it binds the pump.",
         "grate": "The grate is not clean. Engine off, clear it.",
         "air": "Air in the water swells ahead of the impeller, to where it runs rough.",
         "standing_waves": "Standing waves or a drop lift the stern out of the water.",

@@ -4,6 +4,7 @@ import math
 import random
 from typing import NamedTuple
 
+from launch_draws import draw_launch
 from monte_carlo import draw
 
 from headwater import air, jet, suction, water
@@ -110,3 +111,69 @@ def hunt(cases: int, draws: int = 2000, seed: int = 1) -> Hunt:
         if failing > 0.05:
             wrong.append({"failing": failing, "case": case})
     return Hunt(cases, go, worst, wrong)
+
+
+def _launch_case(rng: random.Random) -> dict:
+    """A boat with a hidden S, notes of what it then did, a hull, a load and a room near what does."""
+    case = _case(rng)
+    case["boat"]["rpm_from"] = "seen"
+    ring = float(case["boat"]["impeller_diameter"].split()[0]) / 1000
+    beam = ring * rng.uniform(8, 10)
+    dry = 1000 * (beam / 1.95) ** 3 * rng.uniform(0.8, 1.4)
+    case["boat"] |= {"chine_beam": f"{beam:.3f} m", "dry_mass": f"{dry:.0f} kg"}
+    case["notes"] = [note for note in case["notes"] if note["boat_speed"].startswith("0.00")]
+    people = rng.randint(1, 8)
+    case["plan"] = {
+        "people": people,
+        "fuel": f"{rng.uniform(10, 150):.0f} l",
+        "gear": f"{rng.uniform(0, 300):.0f} kg",
+    }
+    if rng.random() < 0.3:
+        case["plan"]["throttle"] = f"{rng.uniform(75, 100):.0f} %"
+    if rng.random() < 0.2:
+        case["plan"]["feed_in"] = f"{rng.uniform(0.5, 8):.1f} s"
+    if rng.random() < 0.4:
+        case["place"]["current"] = f"{rng.uniform(0.2, 2.5):.1f} m/s"
+    if rng.random() < 0.4:
+        case["place"]["wind"] = rng.choice(["breeze", "strong"])
+    case["place"]["room"] = f"{rng.uniform(50, 400):.0f} m"
+    if rng.random() < 0.7:
+        held = [note for note in case["notes"] if note["outcome"] == "held"]
+        rpm = held[0]["rpm"] if held else 0.85 * case["boat"]["wide_open_rpm"]
+        load = rng.uniform(100, 700)
+        case["notes"].append(
+            {
+                "outcome": "planed",
+                "rpm": rpm,
+                "altitude": case["notes"][0]["altitude"] if case["notes"] else "400 m",
+                "water_temperature": "12 C",
+                "load": f"{load:.0f} kg",
+                "feed_in": f"{rng.uniform(1, 5):.1f} s",
+                "seconds": f"{rng.uniform(5, 16):.1f} s",
+            }
+        )
+    return case
+
+
+def hunt_launches(count: int, draws: int = 500, seed: int = 1) -> Hunt:
+    """Draw each launch that is a go, under its own rpm, feed-in and direction.
+
+    :param count: random cases
+    :param draws: of each
+    """
+    rng, go, worst, wrong = random.Random(seed), 0, 0.0, []
+    for _ in range(count):
+        case = _launch_case(rng)
+        found = answer(case)
+        if found["verdict"] != "go":
+            continue
+        go += 1
+        way = found["launch"][found["launch"]["better"]]
+        made = case, way["planned_rpm"], way["feed_in"], found["launch"]["better"]
+        failing = draw_launch(*made, n=draws).failing
+        if failing > 0.05:  # a closer look, so that no chance of the draws decides
+            failing = draw_launch(*made, n=2000, seed=2).failing
+        worst = max(worst, failing)
+        if failing > 0.05:
+            wrong.append({"failing": failing, "case": case})
+    return Hunt(count, go, worst, wrong)
