@@ -18,6 +18,8 @@ GAS_CAUTION, GAS_STOP = 0.02, 0.04  # share of free gas at the impeller: rough, 
 _CLEAN = {"grate": "clean", "water": "clear"}
 _SIGNS = {"up": -1, "down": 1}
 _LEAST_GAIN = 0.03  # of the room, for a remedy to be worth a word
+_LOAD_SPARE = 0.97  # of the heaviest load, to be advised
+_LIGHTER = (0.8, 0.6, 0.4, 0.2, 0.05)  # shares of the load, tried where she does not plane with all of it
 _RPM_APART = 25.0  # between two rpm that are not the same advice
 _LOAD_STEP = 5.0  # kg, of a heaviest load
 _SPARE, _MOST_SPARE = 0.5, 1.5  # added to an advised feed-in that falls short by the last of its doubt [s]
@@ -180,6 +182,7 @@ class Outlook:
             _chance(attempt),
             trial.chance_short(attempt, sign),
             distance.high is not None,
+            distance.high is not None and (room is None or distance.high <= room),
             best.run.planed,
             site.room is None or trial.ground(best.run, sign) <= site.room,
             room is None or room > 0,
@@ -285,9 +288,10 @@ class Outlook:
         found: dict[str, Any] = {}
         for name, way in self.ways.items():
             row: dict[str, Any] = {"heaviest_load": None, "abort_mark": None}
-            if way.attempt.run.planed and self.site.room is not None:
-                load = self.trial.heaviest_load(way.attempt, way.sign, limit)
+            if self.site.room is not None:
+                load = self._heaviest(way.sign, way.attempt, limit)
                 row["heaviest_load"] = None if load is None else math.floor(load / _LOAD_STEP) * _LOAD_STEP
+            if way.attempt.run.planed and self.site.room is not None:
                 row["abort_mark"] = self.trial.abort_mark(way.attempt, way.sign)
             found[name] = row
         found["remedies"] = self._remedies()
@@ -342,13 +346,20 @@ class Outlook:
 
     def _lighter(self, way: Way, rpm: float, feed: float) -> float | None:
         """The most aboard with which she is on plane within the room, on the low side [kg]."""
-        attempt = self.trial.attempt(rpm, feed)
-        if self.site.room is None or not attempt.run.planed:
-            return None
-        most = self.trial.heaviest_load(attempt, way.sign, self.load)
+        most = self._heaviest(way.sign, self.trial.attempt(rpm, feed), self.load)
         if most is None or most >= self.load:
             return None
-        return math.floor(0.97 * most / _LOAD_STEP) * _LOAD_STEP
+        return math.floor(_LOAD_SPARE * most / _LOAD_STEP) * _LOAD_STEP
+
+    def _heaviest(self, sign: int, attempt: Attempt, limit: float | None) -> float | None:
+        """The most aboard in this room, looked for from a load with which she planes at all [kg]."""
+        trial = self.trial
+        for share in _LIGHTER:
+            if attempt.run.planed or not self.load:
+                break
+            trial = self._trial(self.plan["rows"], share)
+            attempt = trial.attempt(attempt.rpm, attempt.feed_in)
+        return trial.heaviest_load(attempt, sign, limit)
 
     def _offer(
         self, rows: list[dict[str, Any]], before: Way, after: Way, code: str, values: Mapping[str, Any]

@@ -25,6 +25,7 @@ TURN_LENGTHS = 5.0  # of the boat, kept of the room to turn away in [P]
 TURN_MORE = 10.0  # m, where a rapid or rocks lie beyond [P]
 _CURRENT_DOUBT = 0.15  # of the current, relative [P]
 _CLIFF = 0.05  # least surplus over the drag under which she may not plane
+_CLIFF_LOW = 0.03  # the same on its low side
 _CLIFF_STEP = 1.0  # in ln distance, for an end under which she never planes
 _LOAD_TRIALS = 9
 _MOST_LOAD = 4.0  # times the dry boat, searched
@@ -263,7 +264,7 @@ class Trial:
     def may_not_plane(self, attempt: Attempt) -> bool:
         """Whether the hump lies so close that the doubt has no far side."""
         low = self.surplus(attempt).low
-        return attempt.run.surplus < _CLIFF or low is None or low <= 0
+        return attempt.run.surplus < _CLIFF or low is None or low <= _CLIFF_LOW
 
     def chance_short(self, attempt: Attempt, sign: int) -> float:
         """Chance that she is not on plane within the room for it."""

@@ -5,7 +5,7 @@ from typing import NamedTuple
 from headwater.doubt import CHANCE, EQUAL, Judged, Reckoning
 from headwater.launch import IDLE_RPM
 
-FAILS = 0.045  # chance that a launch which is a go fails, pump and room together, at most [P]
+FAILS = 0.04  # chance that a launch which is a go fails, pump and room together, at most [P]
 
 
 class Decision(NamedTuple):
@@ -106,6 +106,7 @@ class Launching(NamedTuple):
     plan_chance: float  # of letting go under the plan's feed-in, where it is a go
     short_chance: float  # of not being on plane within the room for it
     far_side: bool  # whether the room she needs has a far side; else she may not plane
+    far_fits: bool  # whether that is within the room for it
     planes: bool  # under the best feed-in, on the central estimate
     fits: bool  # the same within the whole room
     room_to_turn: bool
@@ -136,12 +137,13 @@ def launch(made: Launching, stop_dropped: bool, fixed: bool, today: bool) -> Dec
     pump = Decision("caution", "new", "", against) if against else inside(made.plan, fixed, today)
     why = list(pump.why)
     if pump.verdict == "go":
-        if not made.flags and made.far_side and made.plan_chance + made.short_chance <= FAILS:
+        sure = made.far_side and made.far_fits and made.plan_chance + made.short_chance <= FAILS
+        if sure and not made.flags:
             return Decision("go", pump.ground, "launch_go", why)
         why = []
     if not made.far_side:
         why.append("may_not_plane")
-    elif made.short_chance > FAILS:
+    elif not made.far_fits or made.short_chance > FAILS:
         why.append("room_tight")
     elif pump.verdict == "go" and not made.flags:
         why.append("both_tight")

@@ -98,10 +98,10 @@ def fill_own_boat(page):
     state(page, "go")
 
 
-def command_line(tmp_path, case):
+def command_line(tmp_path, case, *more):
     file = tmp_path / "case.json"
     file.write_text(json.dumps(case))
-    command = [sys.executable, "-m", "headwater", "check", str(file), "--units", "us"]
+    command = [sys.executable, "-m", "headwater", "check", str(file), *more]
     done = subprocess.run(command, capture_output=True, text=True, cwd=ROOT / "py", check=True)
     return done.stdout
 
@@ -123,7 +123,7 @@ def test_done_means_offline_the_demo_boat_moved_to_2500_m_reads_as_the_command_l
     assert lead == "Your 3,700 at Alder Landing is 3,230 here."
     case = json.loads(json.dumps(DEMO))
     case["place"]["altitude"] = "2500 m"
-    printed = command_line(tmp_path, case)
+    printed = command_line(tmp_path, case, "--units", "us")
     assert lead in printed
     assert headline in printed
     assert phone.complaints == [] or all("not-kept" in line or "ERR_" in line for line in phone.complaints)
@@ -399,3 +399,52 @@ def test_night_and_day_are_one_tap_and_remembered(phone):
     page.wait_for_timeout(300)
     page.reload()
     page.wait_for_selector("html[data-theme=night]")
+
+
+def test_done_means_the_loaded_demo_boat_at_2500_m_is_launched_offline_as_the_command_line_says(
+    phone, server, tmp_path
+):
+    page = phone.open("#demo")
+    state(page, "go")
+    phone.ready_offline()
+    server.kill()
+    page.reload()
+    state(page, "go")
+    page.click("#launch-more > summary")
+    for name, value in (("altitude", "8202 ft"), ("water_temperature", "46.4"), ("room", "460")):
+        page.fill(f"#place-{name}", value)
+    for name, value in (("hard", ""), ("people", "7"), ("fuel", "120"), ("gear", "216")):
+        page.fill(f"#plan-{name}", value)
+    state(page, "caution")
+    until(page, "#remedies", "ashore")
+    case = json.loads(json.dumps(DEMO))
+    case["place"] |= {"altitude": "8202 ft", "water_temperature": "46.4 F", "room": "460 ft"}
+    case["plan"] = {"people": "7", "fuel": "120 l", "gear": "216 kg"}
+    printed = " ".join(command_line(tmp_path, case).split())
+    for selector in ("#headline", "#lead", "#abort", "#heaviest"):
+        said = text(page, selector)
+        assert said and said in printed, selector
+    for remedy in page.locator("#remedies li").all_text_contents():
+        assert remedy in printed
+    for row in page.locator("#schedule tbody tr").all():
+        assert " ".join(row.locator("th, td").all_text_contents()) in printed
+    assert "On plane in" in text(page, "#lines")
+
+
+def test_slip_is_said_on_the_boat_s_page_and_kept(phone):
+    page = phone.open("#demo")
+    state(page, "go")
+    page.click("#to-boat")
+    page.click("#slip > summary")
+    page.fill("#slip-0-rpm", "4500")
+    until(page, "#slip-said", "she slips")
+    page.fill("#slip-1-rpm", "fast")
+    until(page, "#slip-said", "Allowed")
+    page.fill("#slip-1-rpm", "4120")
+    page.fill("#slip-1-boat_speed", "20")
+    until(page, "#slip-said", "air or vapour")
+    page.wait_for_timeout(400)
+    page.evaluate("history.replaceState(null, '', location.pathname)")  # else the demo opens afresh
+    page.reload()
+    state(page, "go")
+    assert page.input_value("#slip-0-rpm") == "4500"

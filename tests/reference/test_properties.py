@@ -242,3 +242,80 @@ def test_a_case_with_anything_in_one_reading_gives_an_answer_or_named_errors(par
     case = copy.deepcopy(CASE)
     (case["notes"][0] if part == "notes" else case[part])[name] = value
     is_an_answer(answer(case))
+
+
+# The launch
+
+HULL = {"chine_beam": "1.95 m", "dry_mass": "1,400 kg"}
+loads = st.floats(100, 800)
+
+
+def start(boat, altitude, load, celsius=12.0, plan=None, place_more=None):
+    """A launch at a fixed rpm, its pump fixed: the way against the current, and with it."""
+    case = {
+        "boat": boat | HULL | {"suction_specific_speed": 420},
+        "place": place(altitude, celsius) | (place_more or {}),
+        "plan": {"rpm": 3300, "gear": f"{load:.1f} kg"} | (plan or {}),
+    }
+    found = answer(case)
+    assert found["errors"] == []
+    return found["launch"]
+
+
+def shortest(*args, **more):
+    feed = start(*args, **more)["up"]["shortest_feed_in"]
+    return 99.0 if feed is None else feed
+
+
+@quick
+@given(boats, st.floats(0, 2500), loads, waters)
+def test_the_feed_in_never_shortens_with_altitude_load_blockage_air_or_warm_water(
+    boat, altitude, load, celsius
+):
+    base = shortest(boat, altitude, load, celsius)
+    assert shortest(boat, altitude + 400, load, celsius) >= base
+    assert shortest(boat, altitude, load + 150, celsius) >= base
+    assert shortest(boat, altitude, load, celsius + 4) >= base
+    assert shortest(boat, altitude, load, celsius, plan={"grate": "weed"}) >= base
+
+
+@quick
+@given(boats, st.floats(0, 2500), loads, st.floats(1, 8))
+def test_room_never_shrinks_with_load_or_blockage(boat, altitude, load, feed):
+    def room(load, **plan):
+        made = start(boat, altitude, load, plan={"feed_in": f"{feed:.1f} s"} | plan)
+        value = made["up"]["distance_to_plane"]["value"]
+        return math.inf if value is None else value
+
+    base = room(load)
+    assert room(load + 150) >= base
+    assert room(load, grate="stick") >= base
+
+
+@quick
+@given(boats, st.floats(0, 2500), loads, st.floats(0.5, 8))
+def test_a_longer_feed_in_never_lowers_the_smallest_ratio(boat, altitude, load, feed):
+    def least(feed):
+        made = start(boat, altitude, load, plan={"feed_in": f"{feed:.1f} s"})["up"]
+        return min(value for value in made["ratio"] if value is not None)
+
+    assert least(feed + 1) >= least(feed) * (1 - 2e-3)  # to the step of the run
+
+
+@quick
+@given(boats, st.floats(0, 3500), loads, st.floats(0, 3))
+def test_the_schedule_keeps_to_engine_and_pump_and_follows_the_current(boat, altitude, load, current):
+    made = start(boat, altitude, load, place_more={"current": f"{current:.2f} m/s"})
+    for up, down in zip(made["up"]["schedule"], made["down"]["schedule"], strict=True):
+        assert up["ground_speed"] <= down["ground_speed"]
+    for row in made["up"]["schedule"]:
+        assert row["rpm"] <= max(3300, made["up"]["planned_rpm"], float(boat["wide_open_rpm"])) * (1 + 1e-9)
+
+
+@quick
+@given(boats, st.floats(1500, 3500), st.floats(2500, 6000))
+def test_a_boat_that_cannot_plane_says_so(boat, altitude, load):
+    made = start(boat, altitude, load)["up"]
+    if made["hump_surplus"]["value"] <= 0:
+        assert made["time_to_plane"]["value"] is None
+        assert made["distance_to_plane"]["value"] is None
