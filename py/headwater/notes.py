@@ -19,6 +19,7 @@ OLDER_SIGMA = 0.25  # one sigma in ln S of a note of an older pump set-up [P]
 FLARE_RATIO = 1.25  # NPSH ratio of the flare line while none has been seen [P]
 FLARE_EASE = 0.90  # of the lowest flared rpm, where nothing has held yet [P]
 DISAGREE_SIGMAS = 1.96  # joint spreads by which notes must cross to contradict each other
+TOO_GOOD_SIGMAS = 3.0  # joint spreads by which a launch may tell of less drag than the prior [P]
 _ROOT_HALF = math.sqrt(0.5)
 _ROOT_TWO_PI = math.sqrt(2 * math.pi)
 _CELLS_A_SIGMA = 2  # to which a blur is resolved
@@ -197,6 +198,12 @@ class Mark(NamedTuple):
     x: float  # ln allowance
     sigma: float  # one sigma
     measured: bool  # she planed in so many seconds; else she would not plane, and it is a bound
+
+    def too_good(self, prior: tuple[float, float, float]) -> bool:
+        """Whether it tells of less drag than a hull can have: then a reading is off, and it tells nothing."""
+        low, middle, _ = (math.log(value) for value in prior)
+        joint = math.hypot(self.sigma, (middle - low) / DISAGREE_SIGMAS)
+        return self.measured and middle - self.x > TOO_GOOD_SIGMAS * joint
 
 
 def learn_allowance(prior: tuple[float, float, float], marks: Sequence[Mark]) -> Belief:

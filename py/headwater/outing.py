@@ -202,6 +202,8 @@ class Outlook:
             codes.append("never_holds")
         if self.site.shallow:
             codes.append("shallow_drag")
+        if any(mark.too_good(hull.ALLOWANCE) for mark in self.check.marks):
+            codes.append("launch_off")
         depth = self.place.get("depth")
         below = self.boat["shaft_depth"] + self.boat.get("intake_height", self.boat["impeller_diameter"])
         attempt = next(iter(self.ways.values())).attempt

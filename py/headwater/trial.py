@@ -89,7 +89,11 @@ class Trial:
         self.check, self.tries, self.outing, self.running = check, tries, outing, running
         self.site, self.allowed = site, allowed
         prior = hull.SHALLOW_ALLOWANCE if site.shallow else hull.ALLOWANCE
-        alike = [k for k, made in enumerate(tries.made) if made.shallow == site.shallow]
+        alike = [
+            k
+            for k, made in enumerate(tries.made)
+            if made.shallow == site.shallow and not check.marks[k].too_good(prior)
+        ]
         marks = [check.marks[k] for k in alike]
         belief = notes.learn_allowance(prior, marks)
         low, middle, high = (belief.quantile(share) for share in (LOW, MIDDLE, HIGH))

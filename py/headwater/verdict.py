@@ -5,7 +5,7 @@ from typing import NamedTuple
 from headwater.doubt import CHANCE, EQUAL, Judged, Reckoning
 from headwater.launch import IDLE_RPM
 
-FAILS = 0.04  # chance that a launch which is a go fails, pump and room together, at most [P]
+FAILS = 0.033  # chance that a launch which is a go fails, pump and room together, at most [P]
 
 
 class Decision(NamedTuple):

@@ -323,6 +323,8 @@ def _caution(code: str, facts: Facts, say: _Say) -> str:
         "fixed_disagrees": "A note disagrees with the S you fixed. The fixed one is used.",
         "barometer_at_water": "The barometer must show the pressure at the water. Add the altitude to check.",
         "papers": "Rpm and power are out of papers: the spans are wider.",
+        "launch_off": "A launch you noted was quicker than any hull of this weight. It is left out: "
+        "check its seconds and load, beam and weight.",
         "never_holds": "At this rpm no feed-in keeps the pump within what it is known to hold.",
         "shallow_drag": "Under a metre of water drag is higher, most where her own waves keep up with her.",
         "gravel": "Shallow under the intake: standing at this power it lifts gravel. Move to deeper water.",

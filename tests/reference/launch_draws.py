@@ -269,8 +269,7 @@ def draw_launch(case, rpm, feed_in, direction, n=500, seed=1):
     time, through, hardest, turned = world.run(
         hull, allowance, turning, feed, WINDS[place["wind"]], boat["jets_running"], head, rho
     )
-    at_plan = float(np.median(turned))
-    spread = [(below, x, np.hypot(own, np.log(other / at_plan))) for below, x, own, other in bounds]
+    spread = [(below, x, np.hypot(own, np.log(other / turned))) for below, x, own, other in bounds]
     fixed = boat.get("suction_specific_speed")
     limit = np.full(n, math.log(fixed)) if fixed else sample_limit(rng, n, spread)
     current = (-1 if direction == "up" else 1) * place["current"] * (1 + 0.15 / SIGMAS * normal(n))
