@@ -28,9 +28,16 @@ THRUST_DEDUCTION = (-0.08, 0.0, 0.05)  # low, middle, high; Eslamdoost et al. 20
 CHANCE = 0.0385
 LOW, MIDDLE, HIGH = 0.025, 0.5, 0.975
 EQUAL = 1e-6  # in ln S
-# Inputs that a launch alone feels.
-LAUNCH_KEYS = frozenset(
-    ("boat.dry_mass", "boat.centre_of_gravity", "boat.chine_beam", "thrust_deduction", "intake_length")
+# Inputs that leave one unit and the water as they are.
+ELSEWHERE = frozenset(
+    (
+        "boat.dry_mass",
+        "boat.centre_of_gravity",
+        "boat.chine_beam",
+        "thrust_deduction",
+        "intake_length",
+        "engine_exponent",
+    )
 )
 _FEW_PASSES = 2  # with so few the ends are worked out but once
 _SAME_DOUBT = 0.005  # relative change of rpm under which the ends are not worked out again
@@ -282,7 +289,7 @@ class Reckoning:
         for key, span in spans.items():
             for value in span:
                 moved = {**inputs, key: value}
-                at = self.centre if key in LAUNCH_KEYS else setting(moved)
+                at = self.centre if key in ELSEWHERE else setting(moved)
                 allowances: list[float] = []
                 asked_by: dict[int, float | None] = {}
                 if tries and key in STILL:

@@ -23,6 +23,7 @@ _STEP = 0.2  # while the throttle opens [s]
 _MOST_STEPS = 30  # the same, where it opens slowly and little changes in a step
 _PANELS = 24  # of boat speed once it has settled; even
 _NODES = 20  # of the drag curve
+_HUMP_FROUDE = 1.6  # about where drag is highest, for a word on the range
 _TOP_FROUDE = 3.6  # where the drag curve ends
 _LEAST_ALLOWANCE, _MOST_ALLOWANCE = 0.3, 4.0  # between which a note's is looked for
 _HALVINGS = 10
@@ -39,6 +40,7 @@ class Drag(NamedTuple):
     cubics: Sequence[tuple[float, float, float, float]]
     speeds: Sequence[float]  # of the nodes [m/s]
     nodes: Sequence[float]  # [N]
+    inside: bool  # whether hump and plane lie within the range of the published tests
 
 
 class Craft(NamedTuple):
@@ -92,7 +94,12 @@ def drag(body: hull.Hull, density: float, viscosity: float) -> Drag:
     for k in range(_NODES - 1):
         y, z, m, n = nodes[k], nodes[k + 1], slopes[k], slopes[k + 1]
         cubics.append((y, m, 3 * (z - y) - 2 * m - n, 2 * (y - z) + m + n))
-    return Drag(first, step, hull.PLANE_FROUDE * first, nodes[0] / first**2, cubics, speeds, nodes)
+    plane = hull.PLANE_FROUDE * first
+    inside = all(
+        hull.within(body, speed, hull.planing(body, speed, density, viscosity))
+        for speed in (_HUMP_FROUDE * first, plane)
+    )
+    return Drag(first, step, plane, nodes[0] / first**2, cubics, speeds, nodes, inside)
 
 
 def _slopes(nodes: Sequence[float]) -> list[float]:

@@ -211,6 +211,8 @@ class Outlook:
             codes.append("gravel")
         if self.site.room is None:
             codes.append("room_unknown")
+        if not self.trial.craft.drag.inside:
+            codes.append("hull_extrapolated")
         return codes
 
     # What the answer carries

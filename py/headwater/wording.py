@@ -328,6 +328,7 @@ def _caution(code: str, facts: Facts, say: _Say) -> str:
         "never_holds": "At this rpm no feed-in keeps the pump within what it is known to hold.",
         "shallow_drag": "Under a metre of water drag is higher, most where her own waves keep up with her.",
         "gravel": "Shallow under the intake: standing at this power it lifts gravel. Move to deeper water.",
+        "hull_extrapolated": "This hull lies outside the tests its drag is reckoned from.",
         "room_unknown": "Room not given: compare what she needs with what you have.",
         "engine_extrapolated": "Over 1,000 m the engine's power is reckoned past its standard. "
         "Note wide open up here once.",
@@ -847,7 +848,7 @@ SCREEN = {
     "putin": "Put-in",
     "boat": "Boat",
     "notes": "What has she done?",
-    "notes_hint": "One line for each time you know the rpm: she held, the revs ran up, or she let go.",
+    "notes_hint": "One for each time you know the rpm: held, revs ran up, let go, planed or would not.",
     "note": "Note",
     "first": "First",
     "first_hint": "Four readings and the check can answer.",
