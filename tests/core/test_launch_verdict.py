@@ -224,3 +224,41 @@ def test_every_figure_of_a_launch_is_one_or_none():
             for name in ("boat_speed", "ground_speed", "distance", "power", "rpm", "ratio", "limit"):
                 assert len(way[name]) == count
             assert all(math.isfinite(value) for value in way["boat_speed"])
+
+
+# What turns a go into a caution
+
+
+def test_flat_torque_up_high_turns_a_go_into_a_caution():
+    """Power near its peak keeps f^1 of sea level's, flat torque f^1.5: wide open read up high tells which."""
+    boat = {"dry_mass": "1,650 kg", "high_altitude": "2500 m"}
+    torque = (74682.5 / 101325) ** 1.2 * (288.15 / 271.9) ** 0.6  # ISO 1585 in standard air at 2500 m
+    there = {"altitude": "2500 m", "room": "100 m"}
+    held = [note | {"rpm": note["rpm"] + 250} for note in NOTES]  # a pump that the engine does not reach
+    plan = {"throttle": "100 %", "people": 3}
+    verdicts = {
+        e: launch(plan, boat | {"high_rpm": 4200 * torque ** (e / 3)}, there, held)["verdict"]
+        for e in (1.0, 1.5)
+    }
+    assert verdicts == {1.0: "go", 1.5: "caution"}
+
+
+def test_gps_speed_read_as_water_speed_downstream_hides_a_caution():
+    """At 8 m/s by GPS with 2 m/s of current behind her the pump sees 6."""
+
+    def at(speed):
+        plan = {"rpm": 3730, "boat_speed": f"{speed} m/s"}
+        return answer({"boat": BOAT, "place": HOME, "plan": plan, "notes": NOTES[:1]})["verdict"]
+
+    speeds = [v / 2 for v in range(0, 25)]
+    first = next(v for v in speeds if at(v) == "go")
+    assert first > 0
+    assert at(first - 2 if first >= 2 else 0) == "caution"
+
+
+def test_a_touched_impeller_turns_a_go_into_a_caution():
+    noted = [note | {"date": "2026-05-01"} for note in [*NOTES, PLANED]]
+    assert launch(boat={"date": "2026-04-01"}, notes=noted)["verdict"] == "go"
+    touched = launch(boat={"date": "2026-06-01"}, notes=noted)
+    assert touched["verdict"] == "caution"
+    assert "older_notes_only" in codes(touched, "cautions")
