@@ -233,8 +233,8 @@ def test_flat_torque_up_high_turns_a_go_into_a_caution():
     """Power near its peak keeps f^1 of sea level's, flat torque f^1.5: wide open read up high tells which."""
     boat = {"dry_mass": "1,650 kg", "high_altitude": "2500 m"}
     torque = (74682.5 / 101325) ** 1.2 * (288.15 / 271.9) ** 0.6  # ISO 1585 in standard air at 2500 m
-    there = {"altitude": "2500 m", "room": "104 m"}
-    held = [note | {"rpm": note["rpm"] + 250} for note in NOTES]  # a pump that the engine does not reach
+    there = {"altitude": "2500 m", "room": "90 m"}
+    held = [note | {"rpm": note["rpm"] + 500} for note in NOTES]  # a pump that the engine does not reach
     plan = {"throttle": "100 %", "people": 3}
     verdicts = {
         e: launch(plan, boat | {"high_rpm": 4200 * torque ** (e / 3)}, there, held)["verdict"]
