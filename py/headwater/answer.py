@@ -451,6 +451,7 @@ class _Answer:
             "note": None,
             "launch": None,
             "launch_cautions": [],
+            "direction": self.plan.get("direction"),
             "holding_rpm_share": self.shares["holding_rpm_share"][0],
             "holding_power_share": self.shares["holding_power_share"][0],
         }

@@ -187,13 +187,16 @@ class Outlook:
             site.room is None or trial.ground(best.run, sign) <= site.room,
             room is None or room > 0,
             foam(self.values, check),
-            [*flags(self.values, check), *self._shallow()],
+            [*flags(self.values, check), *self._unsure()],
         )
         decision = verdict.launch(made, check.stop_dropped, check.fixed is not None, check.today)
         return Way(name, sign, attempt, distance, decision)
 
-    def _shallow(self) -> list[str]:
-        return ["shallow"] if self.site.shallow and not self.trial.measured else []
+    def _unsure(self) -> list[str]:
+        """Codes of what is too unsure for a go: shallow water without a launch there, power out of papers."""
+        found = ["shallow"] if self.site.shallow and not self.trial.measured else []
+        papers = self.boat["rpm_from"] == "papers" and "power" in self.plan
+        return [*found, "papers"] if papers else found
 
     def cautions(self) -> list[str]:
         """Codes of what is worth a word beside the launch's verdict."""

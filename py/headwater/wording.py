@@ -146,7 +146,7 @@ def _launch_instruction(code: str, facts: Facts, say: _Say) -> str:
     way = launched[launched["better"]]
     if code == "launch_go":
         room = say.show(way["distance_to_plane"]["value"], "distance", "up")
-        return f"feed it in over {say.show(way['feed_in'], 'time')}, on plane in {room}"
+        return f"{_which_way(facts)}feed it in over {say.show(way['feed_in'], 'time')}, on plane in {room}"
     problem = {
         "launch_over": "the pump lets go on this launch",
         "launch_heavy": "too heavy for this water",
@@ -158,8 +158,16 @@ def _launch_instruction(code: str, facts: Facts, say: _Say) -> str:
         best = best or next((row for row in remedies if row["verdict"] == "caution"), None)
         return f"{problem}; {remedy_words(best, say)}" if best else problem
     if best:
-        return remedy_words(best, say)
+        return _which_way(facts) + remedy_words(best, say)
     return _launch_trouble(facts["why"], facts, way, say)
+
+
+def _which_way(facts: Facts) -> str:
+    """The better way by name, where it was left open and it matters."""
+    launched = facts["launch"]
+    if facts["direction"] or launched["up"]["ground_speed"] == launched["down"]["ground_speed"]:
+        return ""
+    return f"launch {launched['better']}, "
 
 
 def _launch_trouble(why: list[str], facts: Facts, way: Mapping[str, Any], say: _Say) -> str:

@@ -162,6 +162,7 @@ def test_upstream_takes_less_room_and_lower_speeds_by_gps():
     for row, other in zip(up["schedule"], down["schedule"], strict=True):
         assert row["ground_speed"] == pytest.approx(other["ground_speed"] - 3.0)
     assert found["launch"]["better"] == "up"
+    assert found["headline"]["text"].startswith("GO · launch up, feed it in over ")
     assert launch({"direction": "down"}, place={"current": "1.5 m/s"})["launch"]["better"] == "down"
 
 
@@ -204,6 +205,12 @@ def test_without_notes_the_room_is_told_and_the_pump_is_unknown():
     assert (found["verdict"], found["ground"]) == ("caution", "unknown")
     assert better(found)["distance_to_plane"]["value"] > 0
     assert "don't know this pump" in found["headline"]["text"]
+
+
+def test_power_out_of_papers_is_no_go_ahead():
+    papers = {"rpm_from": "papers"}
+    assert "papers" in codes(launch({"power": "180 hp"}, papers))
+    assert launch({"power": "180 hp"}, papers)["verdict"] == "caution"
 
 
 def test_notes_of_an_older_set_up_alone_are_no_go_ahead():
