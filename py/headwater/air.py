@@ -44,16 +44,6 @@ def standard_pressure(altitude: Any) -> Any:
     return pressure_at_height(geopotential_height(altitude))
 
 
-def standard_temperature(altitude: Any) -> Any:
-    """Standard air temperature at an altitude above sea level.
-
-    :param altitude: geometric [m], up to 11000
-    :returns: [K]
-    Source: US Standard Atmosphere 1976; ISO 2533 [V].
-    """
-    return STANDARD_TEMPERATURE - LAPSE_RATE * geopotential_height(altitude)
-
-
 def temperature_at_pressure(pressure: Any) -> Any:
     """Air temperature of the standard atmosphere where it has a pressure.
 

@@ -6,7 +6,7 @@ from collections.abc import Callable, Mapping, Sequence
 from functools import cached_property
 from typing import Any
 
-from headwater import air, engine, fields, jet, notes, share, slip, suction, verdict, water, wording
+from headwater import air, engine, fields, hull, jet, notes, share, slip, suction, verdict, water, wording
 from headwater.doubt import (
     HIGH,
     LOW,
@@ -263,6 +263,7 @@ class _Answer:
                 launched[name].update(row)
         facts["launch"] = launched
         facts["launch_cautions"] = outlook.cautions()
+        facts["critical_speed"] = hull.critical_speed(self.place.get("depth", math.inf))
         if not self.typed:
             self.check = self.check.replanned(outlook.planned.rpm)
             facts["plan_rpm"] = outlook.planned.rpm

@@ -321,6 +321,11 @@ def _caution(code: str, facts: Facts, say: _Say) -> str:
     if code == "note_needs_speed":
         which = ", ".join(_note(named, say) for named in facts["speedless"])
         return f"Standing or running? A note without boat speed proves nothing: {which}."
+    if code == "shallow_drag":
+        near = say.show(facts["critical_speed"], "speed")
+        return (
+            f"Under a metre of water drag is higher, most near {near}, where her own waves keep up with her."
+        )
     if code == "measurement_off":
         which = ", ".join(_note(named, say) for named in facts["off"])
         text = "A measurement is off: she has done what it rules out. Check nozzle, hub, wear ring and power"
@@ -334,7 +339,6 @@ def _caution(code: str, facts: Facts, say: _Say) -> str:
         "launch_off": "A launch you noted was quicker than any hull of this weight. It is left out: "
         "check its seconds and load, beam and weight.",
         "never_holds": "At this rpm no feed-in keeps the pump within what it is known to hold.",
-        "shallow_drag": "Under a metre of water drag is higher, most where her own waves keep up with her.",
         "gravel": "Shallow under the intake: standing at this power it lifts gravel. Move to deeper water.",
         "hull_extrapolated": "This hull lies outside the tests its drag is reckoned from.",
         "room_unknown": "Room not given: compare what she needs with what you have.",
