@@ -54,6 +54,7 @@ export function paintSheet(sheet, goTo) {
   paintLaunch(sheet.launch);
   at("more-lines").replaceChildren(...rest.map(line));
   drawGauge(at("gauge"), sheet.gauge);
+  say("not-checked", sheet.not_checked);
   say("ground", sheet.ground);
   list("reasons", sheet.reasons.map((/** @type {{text: string}} */ row) => row.text));
   say("teach", sheet.teach ?? "");

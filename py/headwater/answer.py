@@ -542,6 +542,12 @@ class _Answer:
             codes.append("barometer_at_water")
         if self.boat["rpm_from"] == "papers":
             codes.append("papers")
+        if not self.launching and not self.speed:
+            loaded = {"plan.people", "plan.gear"} & self.readings.given
+            if loaded:
+                codes.append("hull_unknown")
+            elif "chine_beam" in self.boat and "dry_mass" in self.boat:
+                codes.append("load_unknown")
         if "rpm" not in self.plan and "power" not in self.plan and self._engine_reckoned():
             codes.append("engine_extrapolated")
         return codes

@@ -14,6 +14,7 @@ Facts = Mapping[str, Any]
 
 STATES = {"go": "GO", "caution": "CAUTION", "no-go": "NO-GO"}
 NOT_CHECKED = "Not checked: the run, steering, engine, crew."
+LAUNCH_NOT_CHECKED = "Launch not checked. " + NOT_CHECKED
 LETS_GO = f"Lets go? To idle, count two, feed in again {slip.LETS_GO_EASE:.0f} rpm lower."
 CAUTIONS_ALWAYS = (
     "Life jackets on, kill-switch lanyard clipped.",
@@ -336,6 +337,8 @@ def _caution(code: str, facts: Facts, say: _Say) -> str:
         "fixed_disagrees": "A note disagrees with the S you fixed. The fixed one is used.",
         "barometer_at_water": "The barometer must show the pressure at the water. Add the altitude to check.",
         "papers": "Rpm and power are out of papers: the spans are wider.",
+        "hull_unknown": "For the launch, give beam and weight on the boat's page.",
+        "load_unknown": "For the launch, say who and what is aboard.",
         "launch_off": "A launch you noted was quicker than any hull of this weight. It is left out: "
         "check its seconds and load, beam and weight.",
         "never_holds": "At this rpm no feed-in keeps the pump within what it is known to hold.",
@@ -489,7 +492,7 @@ def sheet(answer: Mapping[str, Any], units: Units) -> dict[str, Any]:
         "errors": errors,
         "understood": answer["understood"],
         "others": {key: other for key, text in answer["understood"].items() if (other := _other(key, text))},
-        "not_checked": NOT_CHECKED,
+        "not_checked": NOT_CHECKED if answer["launch"] else LAUNCH_NOT_CHECKED,
         "lets_go": LETS_GO,
         "waits": False,
     }

@@ -74,6 +74,7 @@ def test_without_hull_or_load_the_steady_rule_stands(more):
         case["plan"] |= CREW
     found = answer(case)
     assert found["launch"] is None
+    assert codes(found, "cautions") == ["hull_unknown" if more else "load_unknown"]
     assert (found["verdict"], found["headline"]["text"]) == ("go", "GO · the pump holds")
 
 
