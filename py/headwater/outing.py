@@ -248,6 +248,7 @@ class Outlook:
             "limit": limits,
             "planned_rpm": attempt.rpm,
             "feed_in": attempt.feed_in,
+            "feed_in_band": _value(*self.trial.feed_band(attempt), "s"),
             "shortest_feed_in": self.planned.advised,
             "least_ratio": None
             if attempt.judged.asked is None

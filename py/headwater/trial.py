@@ -26,6 +26,7 @@ TURN_MORE = 10.0  # m, where a rapid or rocks lie beyond [P]
 _CURRENT_DOUBT = 0.15  # of the current, relative [P]
 _CLIFF = 0.05  # least surplus over the drag under which she may not plane
 _CLIFF_LOW = 0.03  # the same on its low side
+_FLAT = 1e-4  # in ln S a second, under which a longer feed-in gains nothing
 _CLIFF_STEP = 1.0  # in ln distance, for an end under which she never planes
 _LOAD_TRIALS = 9
 _MOST_LOAD = 4.0  # times the dry boat, searched
@@ -56,6 +57,8 @@ class Attempt(NamedTuple):
     judged: Judged  # that instant against what is known of the pump
     ends: list[Run | None]  # the run under each end of each input; none where only the head moves
     ratio: tuple[float | None, float | None, float | None]  # ln NPSHA/NPSHR there, low, middle, high
+    steps: list[float | None]  # by how much each end moves what is asked there
+    feed_slope: float  # by how much a second longer feed-in lowers it, in ln S
 
 
 class Band(NamedTuple):
@@ -166,7 +169,7 @@ class Trial:
         ]
         if x == math.inf:
             none = Judged(None, True, known, None, None, None, False)
-            return Attempt(rpm, feed_in, run, k, none, [*ends, *own], (None, None, None))
+            return Attempt(rpm, feed_in, run, k, none, [*ends, *own], (None, None, None), [], 0.0)
         base = self._excess(run)
         steps: list[float | None] = []
         for end, moved in zip(check.ends, ends, strict=True):
@@ -190,7 +193,8 @@ class Trial:
         v_1 = flow / at.unit.inlet_area
         boils = at.density * (GRAVITY * head - v_1 * v_1 / 2) <= 0
         judged = check.judged(x, boils, known, turned, speed, steps, ratio[2])
-        return Attempt(rpm, feed_in, run, k, judged, [*ends, *own], ratio)
+        slope = (self._excess(own[4]) - self._excess(own[5])) / (slower[1] - slower[0])
+        return Attempt(rpm, feed_in, run, k, judged, [*ends, *own], ratio, steps, slope)
 
     @property
     def _load_doubt(self) -> float:
@@ -339,6 +343,23 @@ class Trial:
             best = min((s for s in (best, best - stride, best + stride) if low <= s <= high), key=room)
         *_, short, rpm, feed = room(best)
         return (rpm, feed) if short < math.inf else None
+
+    def feed_band(self, attempt: Attempt) -> Band:
+        """The feed-in with its doubt: what each input moves at the pump, over what a second more gains there.
+
+        A side is none where the feed-in changes nothing.
+        """
+        if attempt.feed_slope <= _FLAT or attempt.feed_slope == math.inf:
+            return Band(attempt.feed_in, None, None)
+        apart, proven = list(attempt.steps[:-2]), attempt.judged.known.proven
+        if proven:
+            for k, end in enumerate(self.check.ends):  # what it shares with the note cancels
+                here, there = apart[k], end.xs[proven.note]
+                apart[k] = None if here is None or there is None else here - (there - proven.x)
+        low, high = (reach(apart, 0.0, sign) / attempt.feed_slope for sign in (-1, 1))
+        least = max(attempt.feed_in - low, launch.QUICKEST_FEED)
+        most = attempt.feed_in + high
+        return Band(attempt.feed_in, least, most if most <= LONGEST_FEED else None)
 
     # The low side in one run
 

@@ -557,7 +557,7 @@ def _launch_lines(way: Mapping[str, Any], say: _Say) -> list[dict[str, Any]]:
             "first": True,
             "label": "Feed it in over",
             "value": say.show(way["feed_in"], "time"),
-            "span": "",
+            "span": _feed_span(way["feed_in_band"], say),
             "aside": f"to {say.holds(way['planned_rpm'])}",
         }
     ]
@@ -574,6 +574,11 @@ def _launch_lines(way: Mapping[str, Any], say: _Say) -> list[dict[str, Any]]:
         left = max(way["room_for_plane"], 0.0)
         rows.append(_line("left", "Room for it, turn kept", say.show(left, "distance", "down")))
     return rows
+
+
+def _feed_span(band: Mapping[str, Any], say: _Say) -> str:
+    """Its span, where it has two sides."""
+    return "" if band["high"] is None else say.span(band["low"], band["high"], "time")
 
 
 def _line(key: str, label: str, value: str) -> dict[str, Any]:
