@@ -9,6 +9,7 @@ from typing import Any
 from headwater import air, engine, fields, hull, jet, notes, share, slip, suction, verdict, water, wording
 from headwater.doubt import (
     HIGH,
+    LAUNCH_ALONE,
     LOW,
     MIDDLE,
     PAPERS_RPM,
@@ -155,7 +156,8 @@ class _Answer:
         self.outlook: Outlook | None = None
         self.launching = _launching(readings)
         # A launch that planed counts as a note; to run it again takes a while: the steady part comes first.
-        self.tries = tries_of(self.values) if depth > STEADY else None
+        noted = any(note["outcome"] in LAUNCHES for note in self.values["notes"])
+        self.tries = tries_of(self.values) if depth > STEADY and (self.launching or noted) else None
         inputs = inputs_of(self.values)
         self.wide_open, self.exponent = wide_open_here(inputs), inputs["engine_exponent"]
         if inputs["gas"]:
@@ -178,9 +180,12 @@ class _Answer:
 
     def reckon(self, inputs: Inputs, speed: float) -> Reckoning:
         fixed = self.boat.get("suction_specific_speed")
+        spans = spans_of(self.values, self.readings.given, inputs)
+        if not self.tries:
+            spans = {key: span for key, span in spans.items() if key not in LAUNCH_ALONE}
         return Reckoning(
             inputs,
-            spans_of(self.values, self.readings.given, inputs),
+            spans,
             [seen for seen in seen_of(self.values) if self.tries or not seen.planed],
             self.plan_rpm,
             speed,

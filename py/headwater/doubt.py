@@ -28,17 +28,11 @@ THRUST_DEDUCTION = (-0.08, 0.0, 0.05)  # low, middle, high; Eslamdoost et al. 20
 CHANCE = 0.0385
 LOW, MIDDLE, HIGH = 0.025, 0.5, 0.975
 EQUAL = 1e-6  # in ln S
-# Inputs that leave one unit and the water as they are.
-ELSEWHERE = frozenset(
-    (
-        "boat.dry_mass",
-        "boat.centre_of_gravity",
-        "boat.chine_beam",
-        "thrust_deduction",
-        "intake_length",
-        "engine_exponent",
-    )
+# Inputs that a launch alone feels, and those that leave one unit and the water as they are.
+LAUNCH_ALONE = frozenset(
+    ("boat.dry_mass", "boat.centre_of_gravity", "boat.chine_beam", "thrust_deduction", "intake_length")
 )
+ELSEWHERE = LAUNCH_ALONE | {"engine_exponent"}
 _FEW_PASSES = 2  # with so few the ends are worked out but once
 _SAME_DOUBT = 0.005  # relative change of rpm under which the ends are not worked out again
 DISAGREE_EASE = 0.95  # of the lowest let-go rpm, from where notes that contradict forbid a go [P]
@@ -296,7 +290,10 @@ class Reckoning:
                     allowances, asked_by = tries.still(at.submergence, at.tach)
                 elif tries:
                     allowances, asked_by = tries.again(moved, at.clean, at.submergence, at.tach, self.marks)
-                xs = [asked_by[note.note] if note.planed else seen_asked(at, note) for note in self.seen]
+                xs = [
+                    asked_by[note.note] if note.planed else x if at is self.centre else seen_asked(at, note)
+                    for note, x in zip(self.seen, self.xs, strict=True)
+                ]
                 self.ends.append(End(key, moved, at, plan_rpm(moved), xs, allowances))
         self.stop_dropped = any(
             note.outcome == "held" and note.clean and not note.planed and not self._above_boiling(note)
