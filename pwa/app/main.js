@@ -70,7 +70,7 @@ async function check() {
   const turn = (turns += 1);
   at("answer").dataset.settled = "false";
   let reply;
-  for (const depth of [0, 1, 2]) {
+  for (const depth of answered ? [0, 1, 2] : [1, 2]) { // the first answer of all comes whole at once
     reply = await core.ask({ ...question, depth }).catch(() => null);
     if (!reply || asked !== mode || turn !== turns) return;
     paintSheet(reply.sheet, goTo);
